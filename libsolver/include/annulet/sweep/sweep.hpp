@@ -1,0 +1,36 @@
+// Port parameters over frequency, with the currents and what vouches for them.
+#pragma once
+
+#include <annulet/core/progress.hpp>
+#include <annulet/mom/operator.hpp>
+
+#include <Eigen/Core>
+
+#include <vector>
+
+namespace annulet {
+
+/// Figures that every solved frequency carries.
+struct SolveQuality {
+    double relative_residual = 0;      ///< max over ports of |v - Z I| / |v|
+    double reciprocal_condition = 0;   ///< LAPACK 1-norm estimate
+};
+
+struct SweepPoint {
+    double frequency_hz = 0;
+    Eigen::MatrixXcd admittance_s;     ///< ports x ports, siemens, at the gaps
+    Eigen::MatrixXcd currents_a;       ///< unknowns x ports, amperes per volt on that port, others shorted
+    SolveQuality quality;
+};
+
+struct SweepOptions {
+    bool keep_currents = true;
+    int threads = 0;                   ///< 0: OpenMP default
+};
+
+/// Exact fill and full factorisation at every frequency, frequencies in parallel where that is faster.
+/// `frequency_hz` ascending and > 0. Throws NumericalError (singular), Cancelled.
+std::vector<SweepPoint> sweep_every_point(const Operator& op, const std::vector<double>& frequency_hz,
+                                          const SweepOptions& options, Progress* progress = nullptr);
+
+}  // namespace annulet
