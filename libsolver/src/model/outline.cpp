@@ -2,6 +2,7 @@
 
 #include <annulet/core/constants.hpp>
 
+#include <Eigen/Geometry>
 #include <algorithm>
 #include <clipper.hpp>
 #include <cmath>
@@ -11,12 +12,14 @@ namespace annulet {
 
 namespace {
 
-using constants::pi;
 using ClipperLib::Paths;
+using constants::pi;
 
 constexpr double grid_per_m = 1e10;  // of the integer coordinates of Clipper: 0.1 nm, up to 1e8 m
 
-double cross(const Vec2& a, const Vec2& b) { return a.x() * b.y() - a.y() * b.x(); }
+double cross(const Vec2& a, const Vec2& b) {
+    return a.x() * b.y() - a.y() * b.x();
+}
 
 // On which side of the line a-b lies p: 0 when nearer to it than `tiny_m`.
 int side(const Vec2& a, const Vec2& b, const Vec2& p) {
@@ -38,7 +41,9 @@ bool meet(const Vec2& a, const Vec2& b, const Vec2& c, const Vec2& d) {
 }
 
 // Edges in a common corner `b` lie on each other when they run back.
-bool folds(const Vec2& a, const Vec2& b, const Vec2& c) { return side(a, b, c) == 0 && (a - b).dot(c - b) > 0; }
+bool folds(const Vec2& a, const Vec2& b, const Vec2& c) {
+    return side(a, b, c) == 0 && (a - b).dot(c - b) > 0;
+}
 
 void append_arc(std::vector<Vec2>& points, const Vec2& centre, const Vec2& start, double sweep, double step) {
     const int chords = std::max(1, static_cast<int>(std::ceil(std::abs(sweep) / step)));
@@ -57,7 +62,8 @@ Paths to_clipper(const Loops& loops) {
     Paths paths;
     for (const auto& loop : loops) {
         ClipperLib::Path path;
-        for (const Vec2& p : loop) path.emplace_back(std::llround(p.x() * grid_per_m), std::llround(p.y() * grid_per_m));
+        for (const Vec2& p : loop)
+            path.emplace_back(std::llround(p.x() * grid_per_m), std::llround(p.y() * grid_per_m));
         paths.push_back(std::move(path));
     }
     return paths;
@@ -84,7 +90,8 @@ Paths combine(const Paths& a, const Paths& b, ClipperLib::ClipType type) {
 }
 
 Loops loops_of(const Ring& ring) {
-    return {circle(ring.centre, ring.radius_m + ring.width_m / 2), circle(ring.centre, ring.radius_m - ring.width_m / 2)};
+    return {circle(ring.centre, ring.radius_m + ring.width_m / 2),
+            circle(ring.centre, ring.radius_m - ring.width_m / 2)};
 }
 
 Loops loops_of(const StripPath& path) {
@@ -97,7 +104,9 @@ Loops loops_of(const StripPath& path) {
     return from_clipper(result);
 }
 
-Loops loops_of(const Polygon& polygon) { return {polygon.corners}; }
+Loops loops_of(const Polygon& polygon) {
+    return {polygon.corners};
+}
 
 Loops loops_of(const Rectangle& rectangle) {
     const Eigen::Rotation2Dd turn(rectangle.rotation_rad);
@@ -108,7 +117,9 @@ Loops loops_of(const Rectangle& rectangle) {
     return {corners};
 }
 
-Loops loops_of(const Disc& disc) { return {circle(disc.centre, disc.radius_m)}; }
+Loops loops_of(const Disc& disc) {
+    return {circle(disc.centre, disc.radius_m)};
+}
 
 Loops loops_of(const Sector& sector) {
     const Vec2 direction{std::cos(sector.start_rad), std::sin(sector.start_rad)};
@@ -170,7 +181,8 @@ Loops outline_loops(const Shape& shape) {
 
 Loops grown(const Loops& loops, double margin_m) {
     ClipperLib::ClipperOffset offset(2.0, 1e-5 * grid_per_m);
-    offset.AddPaths(combine(to_clipper(loops), {}, ClipperLib::ctUnion), ClipperLib::jtMiter, ClipperLib::etClosedPolygon);
+    offset.AddPaths(combine(to_clipper(loops), {}, ClipperLib::ctUnion), ClipperLib::jtMiter,
+                    ClipperLib::etClosedPolygon);
     Paths result;
     offset.Execute(result, margin_m * grid_per_m);
     return from_clipper(result);

@@ -4,6 +4,7 @@
 #include <annulet/core/constants.hpp>
 
 #include <fmt/format.h>
+#include <Eigen/Geometry>
 
 #include <algorithm>
 #include <cmath>
@@ -14,8 +15,12 @@ namespace {
 
 constexpr double full_turn_rad = 2 * constants::pi * (1 + 1e-12);
 
-std::string millimetres(double length_m) { return to_text(length_m, kinds::length.dimension); }
-std::string place(const Vec2& p) { return fmt::format("({:.6g}, {:.6g}) mm", p.x() * 1e3, p.y() * 1e3); }
+std::string millimetres(double length_m) {
+    return to_text(length_m, kinds::length.dimension);
+}
+std::string place(const Vec2& p) {
+    return fmt::format("({:.6g}, {:.6g}) mm", p.x() * 1e3, p.y() * 1e3);
+}
 
 class PathReader {
 public:
@@ -39,23 +44,29 @@ private:
         if (node == nullptr) return;
         const toml::array* pair = node->as_array();
         if (pair == nullptr) {
-            path_.width_start_m = path_.width_end_m = context_.quantity(*node, fields_.named("width"), kinds::length, ranges::positive_length);
+            path_.width_start_m = path_.width_end_m =
+                context_.quantity(*node, fields_.named("width"), kinds::length, ranges::positive_length);
             return;
         }
         if (pair->size() != 2) {
-            context_.faults.add(position_of(*node), fmt::format("{} must be one width or two, but has {} entries", fields_.named("width"), pair->size()),
-                                "write [width at the start, width at the end] for a taper");
+            context_.faults.add(
+                position_of(*node),
+                fmt::format("{} must be one width or two, but has {} entries", fields_.named("width"), pair->size()),
+                "write [width at the start, width at the end] for a taper");
             return;
         }
-        path_.width_start_m = context_.quantity((*pair)[0], "first " + fields_.named("width"), kinds::length, ranges::positive_length);
-        path_.width_end_m = context_.quantity((*pair)[1], "second " + fields_.named("width"), kinds::length, ranges::positive_length);
+        path_.width_start_m =
+            context_.quantity((*pair)[0], "first " + fields_.named("width"), kinds::length, ranges::positive_length);
+        path_.width_end_m =
+            context_.quantity((*pair)[1], "second " + fields_.named("width"), kinds::length, ranges::positive_length);
     }
 
     void read_points() {
         const toml::array* list = fields_.need_list("points", "[[0, 0], [10, 0]]");
         if (list == nullptr) return;
         if (list->size() < 2) {
-            context_.faults.add(position_of(*list), fmt::format("the {} has fewer than two points", what_), "a path runs from one point at least to another, or along an arc");
+            context_.faults.add(position_of(*list), fmt::format("the {} has fewer than two points", what_),
+                                "a path runs from one point at least to another, or along an arc");
             return;
         }
         for (std::size_t i = 0; i < list->size(); ++i) {
@@ -75,7 +86,10 @@ private:
         if (i == 0) {
             path_.start = *point;
         } else if ((*point - at_).norm() < tiny_m) {
-            context_.faults.add(position_of(node), fmt::format("points {} and {} of the {} coincide at {}", i, i + 1, what_, place(*point)), "leave one of them out");
+            context_.faults.add(
+                position_of(node),
+                fmt::format("points {} and {} of the {} coincide at {}", i, i + 1, what_, place(*point)),
+                "leave one of them out");
         } else {
             path_.pieces.push_back({false, *point, Vec2{0, 0}, 0});
         }
@@ -85,12 +99,14 @@ private:
 
     bool add_arc(const toml::node& node, std::size_t i, const std::string& label) {
         if (i == 0) {
-            context_.faults.add(position_of(node), fmt::format("the {} begins with an arc", what_), "begin with the point where the arc starts");
+            context_.faults.add(position_of(node), fmt::format("the {} begins with an arc", what_),
+                                "begin with the point where the arc starts");
             return false;
         }
         const std::size_t before = context_.faults.count();
         Fields outer(*node.as_table(), label, context_, {"arc"});
-        const toml::table* table = outer.need("arc", "{ center = [0, 0], sweep = \"90 deg\" }") == nullptr ? nullptr : outer.table("arc");
+        const toml::table* table =
+            outer.need("arc", "{ center = [0, 0], sweep = \"90 deg\" }") == nullptr ? nullptr : outer.table("arc");
         if (table == nullptr) return false;
         Fields arc(*table, "the arc at " + label, context_, {"center", "sweep"});
         const auto centre = arc.need_point2("center");
@@ -102,7 +118,9 @@ private:
         }
         const double radius = (at_ - *centre).norm();
         if (radius < tiny_m) {
-            context_.faults.add(arc.where("center"), fmt::format("the arc at {} has its center on its starting point {}", label, place(at_)));
+            context_.faults.add(
+                arc.where("center"),
+                fmt::format("the arc at {} has its center on its starting point {}", label, place(at_)));
             return false;
         }
         check_tightness(radius, node, label);
@@ -116,7 +134,9 @@ private:
     void check_tightness(double radius, const toml::node& node, const std::string& label) {
         const double half_width = std::max(path_.width_start_m, path_.width_end_m) / 2;
         if (!(radius <= half_width)) return;
-        context_.faults.add(position_of(node), fmt::format("the arc at {} has radius {}, not more than half the width {}", label, millimetres(radius), millimetres(2 * half_width)),
+        context_.faults.add(position_of(node),
+                            fmt::format("the arc at {} has radius {}, not more than half the width {}", label,
+                                        millimetres(radius), millimetres(2 * half_width)),
                             "its inner edge would cross itself; widen the arc or narrow the strip");
     }
 
@@ -126,11 +146,14 @@ private:
         path_.closed = close || meets;
         if (path_.closed) path_.pieces.back().end = path_.start;
         if (path_.closed && path_.width_start_m != path_.width_end_m) {
-            context_.faults.add(fields_.where("width"), fmt::format("the closed {} cannot be tapered", what_), "give one width, or leave the path open");
+            context_.faults.add(fields_.where("width"), fmt::format("the closed {} cannot be tapered", what_),
+                                "give one width, or leave the path open");
         }
         const auto line = centre_line(path_);
         if (const auto edges = first_crossing(line, path_.closed)) {
-            context_.faults.add(fields_.where("points"), fmt::format("the {} crosses, touches or folds back on itself near {}", what_, place(line[edges->second])),
+            context_.faults.add(fields_.where("points"),
+                                fmt::format("the {} crosses, touches or folds back on itself near {}", what_,
+                                            place(line[edges->second])),
                                 "draw the branches as separate metal: pieces that overlap are one conductor");
         }
     }

@@ -11,7 +11,7 @@ namespace annulet {
 
 namespace {
 
-constexpr Range full_turn{0, 2 * constants::pi * (1 + 1e-12), true};
+constexpr Range full_turn{0, 2 * constants::pi*(1 + 1e-12), true};
 
 // A shape is handed on only when reading it added no fault.
 template <class T>
@@ -20,7 +20,9 @@ std::optional<T> unless_faulty(T shape, std::size_t faults_before, const Context
     return shape;
 }
 
-std::string place(const Vec2& p) { return fmt::format("({:.6g}, {:.6g}) mm", p.x() * 1e3, p.y() * 1e3); }
+std::string place(const Vec2& p) {
+    return fmt::format("({:.6g}, {:.6g}) mm", p.x() * 1e3, p.y() * 1e3);
+}
 
 std::optional<Shape> read_ring(Fields fields) {
     const std::size_t before = fields.context().faults.count();
@@ -32,7 +34,8 @@ std::optional<Shape> read_ring(Fields fields) {
         fields.context().faults.add(
             fields.where("width"),
             fmt::format("{} must be less than twice the radius, {}, but is {}", fields.named("width"),
-                        to_text(2 * ring.radius_m, kinds::length.dimension), to_text(ring.width_m, kinds::length.dimension)),
+                        to_text(2 * ring.radius_m, kinds::length.dimension),
+                        to_text(ring.width_m, kinds::length.dimension)),
             "radius is that of the centre line; a full disc is 'disc'");
     }
     return unless_faulty<Shape>(ring, before, fields.context());
@@ -47,8 +50,8 @@ std::optional<Shape> read_rectangle(Fields fields) {
     for (int i = 0; i < 2; ++i) {
         if (rectangle.size[i] > 0) continue;
         fields.context().faults.add(fields.where("size"),
-                                    fmt::format("{} must be greater than 0 mm in {}, but is {}", fields.named("size"), "xy"[i],
-                                                to_text(rectangle.size[i], kinds::length.dimension)));
+                                    fmt::format("{} must be greater than 0 mm in {}, but is {}", fields.named("size"),
+                                                "xy"[i], to_text(rectangle.size[i], kinds::length.dimension)));
     }
     return unless_faulty<Shape>(rectangle, before, fields.context());
 }
@@ -70,10 +73,11 @@ std::optional<Shape> read_sector(Fields fields) {
     sector.start_rad = fields.number("start", kinds::angle, ranges::any, 0);
     sector.sweep_rad = fields.need("sweep", kinds::angle, full_turn);
     if (sector.inner_radius_m >= sector.outer_radius_m) {
-        fields.context().faults.add(fields.where("inner_radius"),
-                                    fmt::format("{} must be less than the outer radius, {}, but is {}", fields.named("inner_radius"),
-                                                to_text(sector.outer_radius_m, kinds::length.dimension),
-                                                to_text(sector.inner_radius_m, kinds::length.dimension)));
+        fields.context().faults.add(
+            fields.where("inner_radius"),
+            fmt::format("{} must be less than the outer radius, {}, but is {}", fields.named("inner_radius"),
+                        to_text(sector.outer_radius_m, kinds::length.dimension),
+                        to_text(sector.inner_radius_m, kinds::length.dimension)));
     }
     return unless_faulty<Shape>(sector, before, fields.context());
 }
@@ -83,14 +87,16 @@ std::vector<Vec2> read_corners(const toml::array& list, const std::string& what,
     for (std::size_t i = 0; i < list.size(); ++i) {
         const auto corner = context.point2(list[i], fmt::format("corner {} of the {}", i + 1, what));
         if (!corner) continue;
-        const bool last_is_first = i > 0 && i + 1 == list.size() && (*corner - corners.front()).norm() < tiny_m;
+        const bool last_is_first =
+            !corners.empty() && i + 1 == list.size() && (*corner - corners.front()).norm() < tiny_m;
         if (last_is_first) continue;
         if (!corners.empty() && (*corner - corners.back()).norm() < tiny_m) {
-            context.faults.add(position_of(list[i]), fmt::format("corners {} and {} of the {} coincide at {}", i, i + 1, what, place(*corner)),
-                               "leave one of them out");
+            context.faults.add(
+                position_of(list[i]),
+                fmt::format("corners {} and {} of the {} coincide at {}", i, i + 1, what, place(*corner)),
+                "leave one of them out");
         }
         corners.push_back(*corner);
-        if (i == 0 && corners.empty()) break;
     }
     return corners;
 }
@@ -98,23 +104,30 @@ std::vector<Vec2> read_corners(const toml::array& list, const std::string& what,
 std::optional<Shape> read_polygon(const toml::node& node, const std::string& what, Context& context) {
     const std::size_t before = context.faults.count();
     const toml::array* list = node.as_array();
-    if (const toml::table* table = node.as_table()) list = Fields(*table, "the " + what, context, {"points"}).need_list("points", "[[0, 0], [10, 0], [0, 10]]");
+    if (const toml::table* table = node.as_table())
+        list = Fields(*table, "the " + what, context, {"points"}).need_list("points", "[[0, 0], [10, 0], [0, 10]]");
     if (list == nullptr) {
-        if (!node.is_table()) context.faults.add(position_of(node), fmt::format("the {} must be a list of points", what), "write it as { points = [[0, 0], [10, 0], [0, 10]] }");
+        if (!node.is_table())
+            context.faults.add(position_of(node), fmt::format("the {} must be a list of points", what),
+                               "write it as { points = [[0, 0], [10, 0], [0, 10]] }");
         return std::nullopt;
     }
     if (list->size() > longest_list) {
-        context.faults.add(position_of(*list), fmt::format("the {} has {} corners, more than {}", what, list->size(), longest_list));
+        context.faults.add(position_of(*list),
+                           fmt::format("the {} has {} corners, more than {}", what, list->size(), longest_list));
         return std::nullopt;
     }
     const Polygon polygon{read_corners(*list, what, context)};
     if (context.faults.count() != before) return std::nullopt;
     if (polygon.corners.size() < 3) {
-        context.faults.add(position_of(*list), fmt::format("the {} has {} corners, fewer than 3", what, polygon.corners.size()));
+        context.faults.add(position_of(*list),
+                           fmt::format("the {} has {} corners, fewer than 3", what, polygon.corners.size()));
     } else if (const auto edges = first_crossing(polygon.corners, true)) {
-        context.faults.add(position_of(*list), fmt::format("the outline of the {} crosses or touches itself: the edges from {} and from {}", what,
-                                                           place(polygon.corners[edges->first]), place(polygon.corners[edges->second])),
-                           "list the corners in order around the figure; holes are separate cuts");
+        context.faults.add(
+            position_of(*list),
+            fmt::format("the outline of the {} crosses or touches itself: the edges from {} and from {}", what,
+                        place(polygon.corners[edges->first]), place(polygon.corners[edges->second])),
+            "list the corners in order around the figure; holes are separate cuts");
     } else if (enclosed_area_m2(polygon.corners) < tiny_m * tiny_m) {
         context.faults.add(position_of(*list), fmt::format("the {} encloses no area", what));
     }
@@ -135,7 +148,8 @@ std::optional<Shape> read_shape(Fields& fields) {
     if (kind == "rectangle") return read_rectangle({*table, "the " + what, context, {"center", "size", "rotation"}});
     if (kind == "disc") return read_disc({*table, "the " + what, context, {"center", "radius"}});
     if (kind == "sector") {
-        return read_sector({*table, "the " + what, context, {"center", "inner_radius", "outer_radius", "start", "sweep"}});
+        return read_sector(
+            {*table, "the " + what, context, {"center", "inner_radius", "outer_radius", "start", "sweep"}});
     }
     const auto path = read_path(*table, what, context);
     return path ? std::optional<Shape>(*path) : std::nullopt;
@@ -144,7 +158,8 @@ std::optional<Shape> read_shape(Fields& fields) {
 std::optional<Shape> read_shape_table(const toml::node& node, const std::string& what, Context& context) {
     const toml::table* table = node.as_table();
     if (table == nullptr) {
-        context.faults.add(position_of(node), fmt::format("{} must be a table with a shape", what), "write { disc = { center = [0, 0], radius = 5 } }");
+        context.faults.add(position_of(node), fmt::format("{} must be a table with a shape", what),
+                           "write { disc = { center = [0, 0], radius = 5 } }");
         return std::nullopt;
     }
     Fields fields(*table, what, context, shape_keys);

@@ -23,7 +23,7 @@ struct Reading {
     Context context;
     Model& model;
     std::set<std::string> omit;
-    std::map<std::string, Heights> faces{};     ///< of every laminate; NaN when faulty
+    std::map<std::string, Heights> faces{};  ///< of every laminate; NaN when faulty
     std::set<std::string> metal_names{}, wire_names{}, omittable{}, fixed{};
     bool metals_faulty = false;
 
