@@ -3,18 +3,15 @@
 // Work is done on g rather than Z: it is bounded, and Im g has the sign of X.
 #include <annulet/analysis/network.hpp>
 #include <annulet/numerics/local_rational.hpp>
-
-#include <boost/math/tools/toms748_solve.hpp>
+#include <annulet/numerics/roots.hpp>
 
 #include <algorithm>
 #include <cmath>
-#include <functional>
 
 namespace annulet {
 namespace {
 
 using Complex = std::complex<double>;
-using Curve = std::function<double(double)>;
 constexpr int samples_per_interval = 8;
 constexpr double least_dip = 0.01;
 
@@ -34,21 +31,10 @@ std::vector<double> fine_grid(const std::vector<double>& coarse) {
     return fine;
 }
 
-std::vector<double> sample(const Curve& curve, const std::vector<double>& at) {
+std::vector<double> sample(const RealFunction& curve, const std::vector<double>& at) {
     std::vector<double> values(at.size());
     std::transform(at.begin(), at.end(), values.begin(), curve);
     return values;
-}
-
-/// Zero of `curve` between two points at which it has opposite signs.
-double zero_between(const Curve& curve, double low, double high) {
-    const double at_low = curve(low), at_high = curve(high);
-    if (at_low == 0) return low;
-    if (at_high == 0) return high;
-    std::uintmax_t steps = 100;
-    const auto bracket = boost::math::tools::toms748_solve(curve, low, high, at_low, at_high,
-                                                           boost::math::tools::eps_tolerance<double>(50), steps);
-    return 0.5 * (bracket.first + bracket.second);
 }
 
 /// Q_Z = (w / 2R) |R' + j (X' + |X|/w)|, primes d/dw [Yaghjian2005].
@@ -63,13 +49,13 @@ double quality_factor(const LocalRational& g, double reference_ohm, double frequ
 
 /// First frequency from `start` on in the direction of `step` where `excess` turns positive; the end of the grid if
 /// none.
-double band_edge(const Curve& excess, const std::vector<double>& grid, double start, int step) {
+double band_edge(const RealFunction& excess, const std::vector<double>& grid, double start, int step) {
     auto next = std::upper_bound(grid.begin(), grid.end(), start) - grid.begin();
     if (step < 0) --next;
     double inside = start;
     for (; next >= 0 && next < static_cast<std::ptrdiff_t>(grid.size()); next += step) {
         const double here = grid[static_cast<std::size_t>(next)];
-        if (excess(here) > 0) return zero_between(excess, std::min(inside, here), std::max(inside, here));
+        if (excess(here) > 0) return bracketed_root(excess, std::min(inside, here), std::max(inside, here));
         inside = here;
     }
     return inside;
@@ -90,25 +76,25 @@ public:
 
 private:
     void find_reactance_zeros() {
-        const Curve reactance_sign = [this](double f) { return g_.value(f).imag(); };
+        const RealFunction reactance_sign = [this](double f) { return g_.value(f).imag(); };
         const auto values = sample(reactance_sign, grid_);
         for (std::size_t i = 0; i + 1 < grid_.size(); ++i) {
             const bool crosses = (values[i] < 0 && values[i + 1] >= 0) || (values[i] > 0 && values[i + 1] <= 0);
             if (!crosses) continue;
             add(values[i] < 0 ? ResonanceKind::series : ResonanceKind::parallel,
-                zero_between(reactance_sign, grid_[i], grid_[i + 1]));
+                bracketed_root(reactance_sign, grid_[i], grid_[i + 1]));
         }
     }
 
     void find_matches() {
         const auto power = sample([this](double f) { return std::norm(g_.value(f)); }, grid_);
         // Half the derivative of |g|^2.
-        const Curve slope = [this](double f) { return (std::conj(g_.value(f)) * g_.derivative(f)).real(); };
+        const RealFunction slope = [this](double f) { return (std::conj(g_.value(f)) * g_.derivative(f)).real(); };
         for (std::size_t i = 1; i + 1 < grid_.size(); ++i) {
             if (!(power[i] < power[i - 1] && power[i] <= power[i + 1]) || !deep(power, i)) continue;
             const double low = grid_[i - 1], high = grid_[i + 1];
             const bool bracketed = slope(low) < 0 && slope(high) > 0;
-            add(ResonanceKind::match, bracketed ? zero_between(slope, low, high) : grid_[i]);
+            add(ResonanceKind::match, bracketed ? bracketed_root(slope, low, high) : grid_[i]);
         }
     }
 
@@ -139,7 +125,7 @@ private:
 
     double bandwidth(double frequency_hz) const {
         const double limit = (goal_vswr_ - 1) / (goal_vswr_ + 1);
-        const Curve excess = [this, limit](double f) { return std::abs(g_.value(f)) - limit; };
+        const RealFunction excess = [this, limit](double f) { return std::abs(g_.value(f)) - limit; };
         if (excess(frequency_hz) >= 0) return 0;
         return band_edge(excess, grid_, frequency_hz, 1) - band_edge(excess, grid_, frequency_hz, -1);
     }
