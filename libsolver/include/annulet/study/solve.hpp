@@ -1,0 +1,67 @@
+// The main path once: model, mesh, operator, sweep, network parameters. Other studies and commands start here.
+#pragma once
+
+#include <annulet/analysis/network.hpp>
+#include <annulet/core/progress.hpp>
+#include <annulet/model/model.hpp>
+#include <annulet/mom/operator.hpp>
+#include <annulet/sweep/sweep.hpp>
+
+#include <optional>
+#include <string>
+#include <vector>
+
+namespace annulet {
+
+/// What takes the place of the model's own `[sweep]`; empty fields leave the model's.
+struct FrequencyChoice {
+    std::optional<double> from_hz;
+    std::optional<double> to_hz;
+    std::optional<int> points;
+    std::vector<double> at_hz;
+};
+
+/// Frequencies in hertz, ascending, without repetition. Throws InputError where they make no sweep.
+std::vector<double> sweep_frequencies(const SweepRange& range, const FrequencyChoice& choice = {});
+
+struct SolveOptions {
+    FrequencyChoice frequencies;
+    double memory_limit_bytes = 0;  ///< of the matrix, see MeshOptions
+    int threads = 0;                ///< see SweepOptions
+    bool keep_currents = false;
+};
+
+/// Wall-clock seconds. `factor_s` holds filling and factorising at each frequency, `assemble_s` what is done once.
+struct Timing {
+    double mesh_s = 0, assemble_s = 0, factor_s = 0, post_s = 0, total_s = 0;
+};
+
+/// Match of one port over the goal's band.
+struct PortGoal {
+    std::string port;
+    BandMatch match;
+    bool reached = false;
+};
+
+struct SolvedModel {
+    Model model;
+    Operator op;
+    std::vector<double> frequency_hz;
+    std::vector<double> reference_ohm;  ///< per port
+    std::vector<SweepPoint> points;     ///< at the gaps; currents only if kept
+    std::vector<NetworkPoint> network;  ///< at the far ends of the ports' feed lines
+    std::vector<PortCurve> curves;      ///< one per port
+    std::vector<Resonance> resonances;  ///< of all ports, port by port
+    std::vector<PortGoal> goals;        ///< empty: no goal band, or the sweep does not cover it
+    SolveQuality worst;                 ///< over all frequencies
+    int full_solves = 0;
+    double reflection_error = 0;  ///< largest error that the sweep adds to |S11|; 0: every point exact
+    std::vector<std::string> cautions;
+    Timing timing;
+};
+
+/// Meshes for the highest frequency and solves at every one exactly.
+/// Throws InputError, NumericalError, Cancelled.
+SolvedModel solve_model(Model model, const SolveOptions& options, Progress* progress = nullptr);
+
+}  // namespace annulet
