@@ -38,9 +38,11 @@ void expect_potential(const PlanarElement& e, const Vec3& r) {
     double total = 0;
     for (int k = 0; k < e.slots; ++k) {
         double scalar = 0;
-        reference(e.edge_start(k), e.edge_end(k), e.apex, r, 12, scalar, vector);
+        reference(e.edge_start(k), e.edge_end(k), e.apex, r, 17, scalar, vector);
         total += scalar;
-        if (e.slots == 4) EXPECT_NEAR(v.scalar[static_cast<std::size_t>(k)], scalar, 2e-5 * total) << r.transpose();
+        if (e.slots == 4) {
+            EXPECT_NEAR(v.scalar[static_cast<std::size_t>(k)], scalar, 2e-5 * total) << r.transpose();
+        }
     }
     EXPECT_NEAR(v.scalar[0] + v.scalar[1] + v.scalar[2] + v.scalar[3], total, 2e-5 * total);
     EXPECT_LT((v.vector - vector).norm(), 2e-5 * vector.norm());

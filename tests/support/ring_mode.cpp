@@ -2,6 +2,7 @@
 
 #include <annulet/core/constants.hpp>
 #include <annulet/numerics/roots.hpp>
+#include <annulet/sweep/sweep.hpp>
 
 #include <Eigen/Cholesky>
 
@@ -54,6 +55,20 @@ double mode_frequency_hz(const Operator& op, const Eigen::VectorXd& current, dou
         return (current.transpose() * zc).value().imag();
     };
     return bracketed_root(reactance, from_hz, to_hz, 1e-9);
+}
+
+double driven_mode_frequency_hz(Mesh annulus, double from_hz, double to_hz) {
+    Gap drive;
+    for (std::size_t c = 0; c < annulus.cells.size(); ++c) {
+        Vec3 centre = Vec3::Zero();
+        for (int n : annulus.cells[c].node) centre += annulus.nodes[static_cast<std::size_t>(n)] / 4;
+        const double r2 = centre.squaredNorm();
+        drive.members.push_back({static_cast<int>(c), Vec3(-centre.y(), centre.x(), 0) * (centre.x() / (r2 * std::sqrt(r2)))});
+    }
+    annulus.ports = {drive};
+    const Operator op(std::move(annulus));
+    const auto susceptance = [&](double f) { return solve_point(op, f, false).admittance_s(0, 0).imag(); };
+    return bracketed_root(susceptance, from_hz, to_hz, 1e-9);
 }
 
 double ring_inductance_h(const Operator& op, int rows) {

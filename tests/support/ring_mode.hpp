@@ -12,6 +12,10 @@ Eigen::VectorXd cosine_current(const Mesh& mesh, const Basis& basis, const std::
 /// Zero of Im(c^T Z c), Hz, between the two frequencies.
 double mode_frequency_hz(const Operator& op, const Eigen::VectorXd& current, double from_hz, double to_hz);
 
+/// The same without a profile given: zero of the susceptance of the ring to an impressed field cos(phi) / r along phi,
+/// whose current distributes itself across the strip.
+double driven_mode_frequency_hz(Mesh annulus, double from_hz, double to_hz);
+
 /// Static inductance (H) of the perfectly conducting annulus: rows of cells carry uniform currents that share one
 /// flux, L = 1 / (1^T L_ij^-1 1).
 double ring_inductance_h(const Operator& op, int rows);

@@ -14,9 +14,10 @@ struct EdgeTerm {
     Vec3 vector{0, 0, 0}; ///< to the integral of (rho' - rho)/R
 };
 
-/// ln((R+ + l+)/(R- + l-)) without cancellation for negative l.
-double logarithm(double l_minus, double l_plus, double r_minus, double r_plus) {
-    if (l_minus + l_plus < 0) return std::log((r_minus - l_minus) / (r_plus - l_plus));
+/// ln((R+ + l+)/(R- + l-)), R^2 = l^2 + R0^2, in the form that cancels nowhere: R + l = R0^2 / (R - l).
+double logarithm(double l_minus, double l_plus, double r_minus, double r_plus, double r0_squared) {
+    if (l_plus < 0) return std::log((r_minus - l_minus) / (r_plus - l_plus));
+    if (l_minus < 0) return std::log((r_plus + l_plus) * (r_minus - l_minus) / r0_squared);
     return std::log((r_plus + l_plus) / (r_minus + l_minus));
 }
 
@@ -32,7 +33,7 @@ EdgeTerm edge_term(const Vec3& from, const Vec3& to, const Vec3& normal, const V
     EdgeTerm term;
     double f = 0;
     if (r0_squared > 1e-24 * scale * scale) {
-        f = logarithm(l_minus, l_plus, r_minus, r_plus);
+        f = logarithm(l_minus, l_plus, r_minus, r_plus, r0_squared);
         term.scalar = t * f;
         if (d != 0)
             term.scalar -= d * (std::atan(t * l_plus / (r0_squared + d * r_plus)) -

@@ -135,9 +135,9 @@ SolvedModel solve_model(Model model, const SolveOptions& options, Progress* prog
     timing.mesh_s = stage.lap();
 
     checkpoint(progress, "assemble", 0, 0);
+    Operator op(std::move(mesh), model.lumped);
     SolvedModel solved{
-        std::move(model), Operator(std::move(mesh)), std::move(frequencies), {}, {}, {}, {}, {}, {}, {}, 0, 0, {}, {}};
-    solved.op.set_lumped(solved.model.lumped);
+        std::move(model), std::move(op), std::move(frequencies), {}, {}, {}, {}, {}, {}, {}, 0, 0, {}, {}};
     timing.assemble_s = stage.lap();
 
     solved.points =
