@@ -97,8 +97,10 @@ private:
         span.direction = (b_ - a_).normalized();
         span.length_m = gap.to_m - gap.from_m;
         span.width_m = bridge_.width_m;
-        const auto from = landing(*gap.before), to = landing(*gap.after);
-        if (!from || !to) return std::nullopt;
+        const auto from = landing(*gap.before);
+        if (!from) return std::nullopt;
+        const auto to = landing(*gap.after);
+        if (!to) return std::nullopt;
         span.from = *from;
         span.to = *to;
         const auto full = [](const Landing& end) { return std::abs(end.tau_a) == 1 && std::abs(end.tau_b) == 1; };

@@ -9,7 +9,8 @@ namespace annulet {
 
 namespace {
 
-constexpr int most_rounds = 20;
+constexpr int carry_rounds = 4;
+constexpr int most_rounds = 100;
 
 struct Link {
     Landing* from;
@@ -64,20 +65,36 @@ std::vector<std::size_t> intervals(const CrossGrid& grid, const Landing& landing
     return covered;
 }
 
-bool equalise(std::vector<CrossGrid>& grids, const Link& link) {
+double sum_of(const CrossGrid& grid, const std::vector<std::size_t>& covered) {
+    double sum = 0;
+    for (const std::size_t i : covered) sum += grid.cells[i];
+    return sum;
+}
+
+// Adds cells one by one where they are largest.
+void raise(CrossGrid& grid, const std::vector<std::size_t>& covered, double to, const AcrossMap& map) {
+    const auto share = [&](std::size_t i) {
+        return (map.to_u(grid.lines[i + 1]) - map.to_u(grid.lines[i])) / grid.cells[i];
+    };
+    for (double sum = sum_of(grid, covered); sum < to; ++sum)
+        ++grid.cells[*std::max_element(covered.begin(), covered.end(),
+                                       [&](std::size_t i, std::size_t j) { return share(i) < share(j); })];
+}
+
+// Both ends of a link need as many cells; where its inner lines correspond, also between those.
+bool equalise(std::vector<CrossGrid>& grids, const Link& link, const AcrossMap& map) {
     CrossGrid &a = grid_of(grids, *link.from), &b = grid_of(grids, *link.to);
     const auto of_a = intervals(a, *link.from), of_b = intervals(b, *link.to);
-    if (of_a.size() != of_b.size())
-        throw NumericalError(
-            "the node lines of the two ends of a gap cannot be matched: bridges on one strip are "
-            "offset by too little; align their edges or move them apart");
-    bool changed = false;
-    for (std::size_t i = 0; i < of_a.size(); ++i) {
-        double &count_a = a.cells[of_a[i]], &count_b = b.cells[of_b[i]];
-        changed = changed || count_a != count_b;
-        count_a = count_b = std::max(count_a, count_b);
-    }
-    return changed;
+    const double before = sum_of(a, of_a) + sum_of(b, of_b);
+    if (of_a.size() == of_b.size())
+        for (std::size_t i = 0; i < of_a.size(); ++i) {
+            double &count_a = a.cells[of_a[i]], &count_b = b.cells[of_b[i]];
+            count_a = count_b = std::max(count_a, count_b);
+        }
+    const double most = std::max(sum_of(a, of_a), sum_of(b, of_b));
+    raise(a, of_a, most, map);
+    raise(b, of_b, most, map);
+    return sum_of(a, of_a) + sum_of(b, of_b) > before;
 }
 
 std::vector<Link> links_of(Layout& layout) {
@@ -98,7 +115,7 @@ void set_lines(std::vector<CrossGrid>& grids, const std::vector<Link>& links) {
             }
         }
     bool added = true;
-    for (int round = 0; added && round < most_rounds; ++round) {
+    for (int round = 0; added && round < carry_rounds; ++round) {
         added = false;
         for (const Link& link : links) {
             added = carry_over(grids, *link.from, *link.to) || added;
@@ -132,9 +149,14 @@ std::vector<CrossGrid> cross_grids(Layout& layout, const MeshOptions& options) {
             const double share = map.to_u(grid.lines[i + 1]) - map.to_u(grid.lines[i]);
             grid.cells.push_back(std::max(1.0, std::ceil(options.cells_across * share - 0.25)));
         }
-    for (bool changed = true; changed;) {
+    bool changed = true;
+    for (int round = 0; changed; ++round) {
+        if (round == most_rounds)
+            throw NumericalError(
+                "the node lines of bridges that overlap one another on several strips cannot be matched; "
+                "align the edges of the bridges or move them apart");
         changed = false;
-        for (const Link& link : links) changed = equalise(grids, link) || changed;
+        for (const Link& link : links) changed = equalise(grids, link, map) || changed;
     }
     return grids;
 }

@@ -239,8 +239,8 @@ std::vector<Piece> lay_out_metal(const Model& model, Faults& faults) {
     return pieces;
 }
 
-bool insert_slit(Piece& piece, const Track& track, int slit) {
-    if (track.from_start() || track.to_end()) return false;
+Obstacle insert_slit(Piece& piece, const Track& track, int slit) {
+    if (track.from_start() || track.to_end()) return {Obstacle::Kind::end, -1};
     const double margin = margin_of(*piece.ribbon), length = piece.ribbon->length_m();
     Front a{Front::Kind::slit_side, [track](double tau) { return track.enter_s_m(tau); }};
     Front b{Front::Kind::slit_side, [track](double tau) { return track.exit_s_m(tau); }};
@@ -248,25 +248,23 @@ bool insert_slit(Piece& piece, const Track& track, int slit) {
     a.enters_slit = true;
     if (!piece.loop && piece.ribbon->closed() && order(piece.fronts.front(), a, margin) != Order::before)
         a.s_m = shifted(a.s_m, length), b.s_m = shifted(b.s_m, length);
+    // On a loop every turn of the other fronts must stay out of the slit, and both its sides on one side of it.
+    const std::vector<double> turns = piece.loop ? std::vector{0.0, length, -length} : std::vector{0.0};
     for (std::size_t i = 0; i < piece.fronts.size(); ++i) {
         const Front& front = piece.fronts[i];
-        bool clear = false;
-        for (const double turn : {0.0, length, -length}) {
-            if (turn != 0 && !piece.loop) continue;
+        const bool first = !piece.loop && i == 0, last = !piece.loop && i + 1 == piece.fronts.size();
+        for (const double turn : turns) {
             const Front moved{front.kind, shifted(front.s_m, turn)};
             const bool before = order(moved, a, margin) == Order::before,
                        after = order(b, moved, margin) == Order::before;
-            const bool end = !piece.loop && (i == 0 || i + 1 == piece.fronts.size());
-            clear = clear || (end ? (i == 0 ? before : after) : before || after);
-            // On a loop every turn of the other front must stay out of the slit.
-            if (!before && !after) return false;
+            if ((before && !last) || (after && !first)) continue;
+            return {front.slit >= 0 ? Obstacle::Kind::slit : Obstacle::Kind::end, front.slit};
         }
-        if (!clear) return false;
     }
     piece.fronts.push_back(std::move(a));
     piece.fronts.push_back(std::move(b));
     sort_fronts(piece);
-    return true;
+    return {};
 }
 
 void finish_fronts(Piece& piece, const Model& model, Faults& faults) {

@@ -53,8 +53,15 @@ std::vector<Piece> lay_out_metal(const Model& model, Faults& faults);
 /// Strip-like shapes: ring, path, rectangle, sector with a hole.
 ConductorKind classify(const Shape& shape);
 
-/// Puts a slit's two fronts into the piece. False if they do not fit between its ends and other slits.
-bool insert_slit(Piece& piece, const Track& track, int slit);
+/// What stands in the way of a slit: nothing, the end of the piece, or another slit (its index).
+struct Obstacle {
+    enum class Kind { none, end, slit };
+    Kind kind = Kind::none;
+    int slit = -1;
+};
+
+/// Puts a slit's two fronts into the piece, if nothing stands in the way.
+Obstacle insert_slit(Piece& piece, const Track& track, int slit);
 
 /// Adds the joints of the centre line as fronts, drops smooth ones that another front crosses, and reports corners
 /// that one crosses; sets block_slit and the outline. To be called when all slits are in.

@@ -84,11 +84,18 @@ private:
         const double reach = length + 2 * (0.02 * width + across_.gap_m);
         const Rectangle slit{0.5 * (a_ + b_), {reach, across_.gap_m}, std::atan2(along.y(), along.x())};
         const Crossings crossings = find_crossings(piece.ribbon, std::make_shared<const Region>(slit));
+        const std::string too_long = fmt::format("does not fit: its gap of {} reaches the end of metal '{}'",
+                                                 mm(across_.gap_m), metal_of(index).name);
+        if (crossings.kind == Crossing::everything) return fault(too_long);
         if (crossings.kind != Crossing::full || crossings.tracks.size() != 1)
             return fault(fmt::format("does not cross metal '{}' once from edge to edge", metal_of(index).name));
-        if (!insert_slit(piece, crossings.tracks[0], static_cast<int>(layout_.slits.size())))
-            return fault(fmt::format("does not fit: its gap of {} reaches the end of metal '{}' or another gap in it",
-                                     mm(across_.gap_m), metal_of(index).name));
+        const Obstacle obstacle = insert_slit(piece, crossings.tracks[0], static_cast<int>(layout_.slits.size()));
+        if (obstacle.kind == Obstacle::Kind::end) return fault(too_long);
+        if (obstacle.kind == Obstacle::Kind::slit) {
+            const int other = layout_.slits[static_cast<std::size_t>(obstacle.slit)].place;
+            return fault("touches or overlaps " + places_of(model_)[static_cast<std::size_t>(other)].what,
+                         "move them apart");
+        }
         layout_.slits.push_back({place_, left_of(along), across_.gap_m});
     }
 
