@@ -100,8 +100,8 @@ std::string base_units(const Dimension& d) {
 
 // The units in which a message shows a kind, largest first.
 std::vector<std::string_view> shown_units(const Dimension& d) {
-    if (d == kinds::length.dimension) return {"m", "mm", "um"};
-    if (d == kinds::frequency.dimension) return {"GHz", "MHz", "kHz", "Hz"};
+    if (d == kinds::length.dimension) return {"km", "m", "mm", "um"};
+    if (d == kinds::frequency.dimension) return {"THz", "GHz", "MHz", "kHz", "Hz"};
     if (d == kinds::time.dimension) return {"s", "ms", "us", "ns", "ps"};
     if (d == kinds::angle.dimension) return {"deg"};
     if (d == kinds::resistance.dimension) return {"Mohm", "kohm", "ohm"};
@@ -114,6 +114,20 @@ std::vector<std::string_view> shown_units(const Dimension& d) {
 
 [[noreturn]] void refuse(std::string message, std::string help) {
     throw InputError({{Severity::error, {}, std::move(message), std::move(help)}});
+}
+
+// Counts in full: "2000000", not "2e+06".
+std::string plain(double value) {
+    const bool count = std::abs(value) < 1e12 && value == std::round(value);
+    return count ? fmt::format("{:.0f}", value) : fmt::format("{:.6g}", value);
+}
+
+std::string zero(const Dimension& dimension) {
+    if (dimension == kinds::length.dimension) return "0 mm";
+    for (const auto symbol : shown_units(dimension)) {
+        if (find_unit(symbol)->scale == 1) return fmt::format("0 {}", symbol);
+    }
+    return "0 deg";
 }
 
 std::string_view trimmed(std::string_view text) {
@@ -161,7 +175,11 @@ std::string kind_with_article(const Dimension& dimension) {
     const auto found = std::find_if(named_kinds.begin(), named_kinds.end(),
                                     [&](const Kind& kind) { return kind.dimension == dimension; });
     if (found == named_kinds.end()) return "a quantity in " + base_units(dimension);
-    const std::string name = found->name;
+    return kind_with_article(*found);
+}
+
+std::string kind_with_article(const Kind& kind) {
+    const std::string name = kind.name;
     return (std::string("aeiou").find(name[0]) != std::string::npos ? "an " : "a ") + name;
 }
 
@@ -172,20 +190,24 @@ std::string kind_with_article(const Quantity& quantity) {
 std::string to_text(double value_si, const Dimension& dimension) {
     const auto shown = shown_units(dimension);
     if (shown.empty()) {
-        return dimension.none() ? fmt::format("{:.6g}", value_si)
-                                : fmt::format("{:.6g} {}", value_si, base_units(dimension));
+        return dimension.none() ? plain(value_si) : fmt::format("{:.6g} {}", value_si, base_units(dimension));
     }
-    if (value_si == 0 && dimension == kinds::length.dimension) return "0 mm";
+    if (value_si == 0) return zero(dimension);
     for (const auto symbol : shown) {
         const Unit unit = *find_unit(symbol);
         // Millimetres read better than a fraction of a metre or tens of micrometres: board dimensions.
         const double least = symbol == "mm" ? 0.01 : 1;
         const bool last = symbol == shown.back();
-        if (last || value_si == 0 || std::abs(value_si) >= least * unit.scale * (1 - 1e-9)) {
+        if (last || std::abs(value_si) >= least * unit.scale * (1 - 1e-9)) {
             return fmt::format("{:.6g} {}", value_si / unit.scale, unit.symbol);
         }
     }
     return {};
+}
+
+std::string to_text(double value_si, const Kind& kind) {
+    const bool fraction = std::string_view(kind.name) == kinds::fraction.name;
+    return fraction ? fmt::format("{:.6g} %", 100 * value_si) : to_text(value_si, kind.dimension);
 }
 
 double parse_quantity(const std::string& text, const Kind& kind, const std::string& what, double bare_scale) {
@@ -194,7 +216,7 @@ double parse_quantity(const std::string& text, const Kind& kind, const std::stri
     double value = 0;
     const auto [end, error] = std::from_chars(whole.data(), whole.data() + whole.size(), value);
     if (error != std::errc{} || !std::isfinite(value)) {
-        refuse(fmt::format("{} must be {}, but is '{}'", what, kind_with_article(kind.dimension), text), help);
+        refuse(fmt::format("{} must be {}, but is '{}'", what, kind_with_article(kind), text), help);
     }
     const std::string symbol(trimmed(whole.substr(static_cast<std::size_t>(end - whole.data()))));
     if (symbol.empty()) return value * bare_scale;
@@ -206,7 +228,7 @@ double parse_quantity(const std::string& text, const Kind& kind, const std::stri
     }
     const Quantity quantity = unit->times(value);
     if (quantity.dimension != kind.dimension) {
-        refuse(fmt::format("{} must be {}, but '{}' is {}", what, kind_with_article(kind.dimension), text,
+        refuse(fmt::format("{} must be {}, but '{}' is {}", what, kind_with_article(kind), text,
                            kind_with_article(quantity)),
                help);
     }

@@ -17,14 +17,14 @@ std::string millimetres(double length_m) {
 }
 
 void check_around(Reading& reading) {
-    for (const Laminate& laminate : reading.model.laminates) {
-        const auto* around = std::get_if<AroundMetal>(&laminate.outline);
-        if (around == nullptr || around->metal.empty() || reading.metal_names.count(around->metal) > 0) continue;
-        const std::string near = nearest(around->metal, {reading.metal_names.begin(), reading.metal_names.end()});
+    for (const Around& around : reading.around) {
+        if (around.metal.empty() || reading.omitted(around.laminate) || reading.metal_names.count(around.metal) > 0)
+            continue;
+        const std::string near = nearest(around.metal, {reading.metal_names.begin(), reading.metal_names.end()});
         reading.faults().add(
-            laminate.where,
-            fmt::format("the outline of laminate '{}' is around metal '{}', which does not exist", laminate.name,
-                        around->metal),
+            around.where,
+            fmt::format("the outline of laminate '{}' is around metal '{}', which does not exist", around.laminate,
+                        around.metal),
             near.empty() ? "name a [[metal]] that is no cut" : fmt::format("did you mean '{}'?", near));
     }
 }

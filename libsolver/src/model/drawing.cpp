@@ -33,21 +33,11 @@ double length_unit(const ParsedText& parsed, Faults& faults) {
     return millimetre;
 }
 
-// Words kept free for later versions get their own message.
-bool report_reserved(const toml::key& key, Faults& faults) {
-    const std::string name(key.str());
-    if (name != "coating" && name != "body") return false;
-    faults.add(position_of(key), fmt::format("'{}' is reserved for a later version", name),
-               "remove it: the model is solved without");
-    return true;
-}
-
-void check_top_keys(const ParsedText& parsed, Context& context) {
-    toml::table known = parsed.root;
-    for (const auto& [key, node] : parsed.root) {
-        if (report_reserved(key, context.faults)) known.erase(key.str());
-    }
-    Fields(known, "the model", context, top_keys).text("title");
+// The remedy for the commonest slip, whose description by the parser leads astray.
+std::string syntax_help(const std::string& description) {
+    const bool open_text = description.find("parsing string") != std::string::npos &&
+                           description.find("control characters") != std::string::npos;
+    return open_text ? "a text ends with its quote on the same line" : "";
 }
 
 }  // namespace
@@ -117,7 +107,8 @@ Drawing read_drawing(std::string text, std::string file_name) {
     } catch (const toml::parse_error& fault) {
         const Position where{static_cast<int>(fault.source().begin.line),
                              static_cast<int>(fault.source().begin.column)};
-        throw InputError({{Severity::error, where, fmt::format("not valid TOML: {}", fault.description()), ""}});
+        throw InputError({{Severity::error, where, fmt::format("not valid TOML: {}", fault.description()),
+                           syntax_help(std::string(fault.description()))}});
     }
     return Drawing(std::move(parsed));
 }
@@ -131,7 +122,7 @@ Model evaluate(const Drawing& drawing, const std::map<std::string, std::string>&
     model.file = parsed.file_name;
     model.title = parsed.root["title"].value_or(std::string());
     Reading reading{{parsed, faults, parameters}, model, {omit.begin(), omit.end()}};
-    check_top_keys(parsed, reading.context);
+    Fields(parsed.root, "the model", reading.context, top_keys, {"coating", "body"}).text("title");
     model.parameters_si = parameters.evaluate_all();
     read_laminates(reading);
     read_metals(reading);

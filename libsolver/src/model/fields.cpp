@@ -21,9 +21,12 @@ const char* type_name(const toml::node& node) {
     return "a date or time";
 }
 
-std::string limits_text(const Range& range, const Dimension& dimension) {
-    const bool below = std::isfinite(range.most), above = std::isfinite(range.least);
-    const std::string least = to_text(range.least, dimension), most = to_text(range.most, dimension);
+// A bound far beyond anything built is not worth telling unless it is the one that was passed.
+std::string limits_text(const Range& range, const Kind& kind, double value) {
+    const bool far = range.most == ranges::farthest_m;
+    const bool below = std::isfinite(range.most) && (!far || value > range.most || range.least == -range.most);
+    const bool above = std::isfinite(range.least) && !(far && value > range.most && range.least == 0);
+    const std::string least = to_text(range.least, kind), most = to_text(range.most, kind);
     if (above && below) {
         return range.above_least ? fmt::format("greater than {} and at most {}", least, most)
                                  : fmt::format("from {} to {}", least, most);
@@ -41,7 +44,7 @@ bool inside(double value, const Range& range) {
 double Context::quantity(const toml::node& node, const std::string& what, const Kind& kind, const Range& range) {
     if (!node.is_number() && !node.is_string()) {
         faults.add(position_of(node),
-                   fmt::format("{} must be {}, but is {}", what, kind_with_article(kind.dimension), type_name(node)),
+                   fmt::format("{} must be {}, but is {}", what, kind_with_article(kind), type_name(node)),
                    node.is_array() || node.is_table() ? "" : fmt::format("write it as \"{}\"", kind.example));
         return faulty;
     }
@@ -52,21 +55,20 @@ double Context::quantity(const toml::node& node, const std::string& what, const 
         value = {value.value * bare_scale(kind.dimension, parameters.unit_m()), kind.dimension, false};
     }
     if (value.dimension != kind.dimension) {
-        faults.add(
-            position_of(node),
-            fmt::format("{} must be {}, but is {}", what, kind_with_article(kind.dimension), kind_with_article(value)),
-            fmt::format("write it as \"{}\", or an expression of that kind", kind.example));
+        faults.add(position_of(node),
+                   fmt::format("{} must be {}, but is {}", what, kind_with_article(kind), kind_with_article(value)),
+                   fmt::format("write it as \"{}\", or an expression of that kind", kind.example));
         return faulty;
     }
     if (!inside(value.value, range)) {
-        faults.add(position_of(node), fmt::format("{} must be {}, but is {}", what, limits_text(range, kind.dimension),
-                                                  to_text(value.value, kind.dimension)));
+        faults.add(position_of(node), fmt::format("{} must be {}, but is {}", what,
+                                                  limits_text(range, kind, value.value), to_text(value.value, kind)));
         return faulty;
     }
     return value.value;
 }
 
-std::vector<double> Context::coordinates(const toml::node& node, const std::string& what) {
+std::vector<double> Context::coordinates(const toml::node& node, const std::string& what, const Range& range) {
     const toml::array* array = node.as_array();
     if (array == nullptr) {
         faults.add(position_of(node), fmt::format("{} must be a point, but is {}", what, type_name(node)),
@@ -83,8 +85,7 @@ std::vector<double> Context::coordinates(const toml::node& node, const std::stri
     std::vector<double> values;
     const char* axis = "xyz";
     for (std::size_t i = 0; i < array->size(); ++i) {
-        values.push_back(
-            quantity((*array)[i], fmt::format("{} of {}", axis[i], what), kinds::length, ranges::coordinate));
+        values.push_back(quantity((*array)[i], fmt::format("{} of {}", axis[i], what), kinds::length, range));
     }
     const bool good = std::none_of(values.begin(), values.end(), [](double v) { return std::isnan(v); });
     return good ? values : std::vector<double>{};
@@ -115,11 +116,18 @@ std::string item_label(const char* kind, const toml::table& table, std::size_t i
     return fmt::format("{} {}", kind, index + 1);
 }
 
-Fields::Fields(const toml::table& table, std::string what, Context& context, std::vector<std::string> allowed)
+Fields::Fields(const toml::table& table, std::string what, Context& context, std::vector<std::string> allowed,
+               const std::vector<std::string>& reserved)
     : table_(table), what_(std::move(what)), context_(context) {
     for (const auto& [key, node] : table) {
         const std::string name(key.str());
-        if (std::find(allowed.begin(), allowed.end(), name) == allowed.end()) report_unknown(key, allowed);
+        if (std::find(allowed.begin(), allowed.end(), name) != allowed.end()) continue;
+        if (std::find(reserved.begin(), reserved.end(), name) != reserved.end()) {
+            context_.faults.add(position_of(key), fmt::format("'{}' is reserved for a later version", name),
+                                "remove it: the model is solved without");
+        } else {
+            report_unknown(key, allowed);
+        }
     }
 }
 
@@ -242,7 +250,7 @@ std::optional<Vec3> Fields::need_point3(std::string_view key) {
     return node == nullptr ? std::nullopt : context_.point3(*node, named(key));
 }
 
-std::string Fields::exactly_one(const std::vector<std::string>& keys, const char* noun) {
+std::string Fields::exactly_one(const std::vector<std::string>& keys, const char* noun, const std::string& help) {
     std::vector<std::string> present;
     for (const std::string& key : keys) {
         if (has(key)) present.push_back(key);
@@ -250,7 +258,7 @@ std::string Fields::exactly_one(const std::vector<std::string>& keys, const char
     if (present.size() == 1) return present.front();
     if (present.empty()) {
         context_.faults.add(where(), fmt::format("{} has no {}", what_, noun),
-                            fmt::format("add one of {}", fmt::join(keys, ", ")));
+                            help.empty() ? fmt::format("add one of {}", fmt::join(keys, ", ")) : help);
         return {};
     }
     std::sort(present.begin(), present.end(), [this](const auto& a, const auto& b) { return where(a) < where(b); });

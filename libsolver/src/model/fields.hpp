@@ -46,17 +46,19 @@ struct Context {
     std::optional<Vec2> point2(const toml::node& node, const std::string& what);
     std::optional<Vec3> point3(const toml::node& node, const std::string& what);
     /// Two or three numbers as lengths.
-    std::vector<double> coordinates(const toml::node& node, const std::string& what);
+    std::vector<double> coordinates(const toml::node& node, const std::string& what,
+                                    const Range& range = ranges::coordinate);
 };
 
 /// "metal 'band'" or, without name, "metal 2".
 std::string item_label(const char* kind, const toml::table& table, std::size_t index);
 
-/// The keys of one table. The constructor reports unknown ones; getters report what is wrong and return nothing,
-/// NaN or an empty value, so that reading goes on to the next fault.
+/// The keys of one table. The constructor reports unknown and reserved ones; getters report what is wrong and return
+/// nothing, NaN or an empty value, so that reading goes on to the next fault.
 class Fields {
 public:
-    Fields(const toml::table& table, std::string what, Context& context, std::vector<std::string> allowed);
+    Fields(const toml::table& table, std::string what, Context& context, std::vector<std::string> allowed,
+           const std::vector<std::string>& reserved = {});
 
     bool has(std::string_view key) const { return table_.contains(key); }
     const toml::node* get(std::string_view key) const { return table_.get(key); }
@@ -78,7 +80,7 @@ public:
     std::optional<Vec3> need_point3(std::string_view key);
 
     /// The one of `keys` that is present, or reports none or several ("shape", "exactly one of ...").
-    std::string exactly_one(const std::vector<std::string>& keys, const char* noun);
+    std::string exactly_one(const std::vector<std::string>& keys, const char* noun, const std::string& help = {});
     /// Reports each of `keys` that is present: "'x' has no meaning ...".
     void refuse(std::initializer_list<const char*> keys, const std::string& reason, const std::string& help = {});
 

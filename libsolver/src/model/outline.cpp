@@ -46,9 +46,10 @@ bool folds(const Vec2& a, const Vec2& b, const Vec2& c) {
 }
 
 void append_arc(std::vector<Vec2>& points, const Vec2& centre, const Vec2& start, double sweep, double step) {
+    const Vec2 arm = start - centre;  // before `points` moves: `start` may lie in it
     const int chords = std::max(1, static_cast<int>(std::ceil(std::abs(sweep) / step)));
     for (int i = 1; i <= chords; ++i) {
-        points.push_back(centre + Eigen::Rotation2Dd(sweep * i / chords) * (start - centre));
+        points.push_back(centre + Eigen::Rotation2Dd(sweep * i / chords) * arm);
     }
 }
 

@@ -41,7 +41,8 @@ private:
         for (const Metal& metal : reading_.model.metals) planes.insert(metal.plane_m);
         if (planes.size() == 1) return *planes.begin();
         // A metal whose plane is faulty has been reported; its port is not to blame.
-        if (reading_.metals_faulty) return std::nullopt;
+        if (reading_.metals_faulty || reported_) return std::nullopt;
+        reported_ = true;
         const std::string why =
             planes.empty() ? "there is no flat metal" : fmt::format("metal lies in {} planes", planes.size());
         reading_.faults().add(
@@ -54,6 +55,7 @@ private:
     Fields& fields_;
     Reading& reading_;
     std::optional<double> height_;
+    bool reported_ = false;
 };
 
 struct Ends {
@@ -86,7 +88,7 @@ std::optional<Ends> read_ends(Fields& fields, const std::string& key, Reading& r
 std::optional<Placement> read_on_wire(Fields& fields, Reading& reading) {
     const std::string name = fields.need_text("wire", "\"lead\"");
     const std::size_t before = reading.faults().count();
-    const double at = fields.number("at", kinds::fraction, {0, 1}, 0.5);
+    const double at = fields.number("at", kinds::number, {0, 1}, 0.5);
     const double gap = fields.need("gap", kinds::length, ranges::positive_length);
     if (reading.omitted(name)) {
         reading.faults().add(fields.where("wire"),
@@ -158,9 +160,9 @@ void read_values(Fields& fields, Lumped& part) {
     if (fields.has("inductance") && fields.has("capacitance")) {
         fields.refuse({"self_resonance"}, "on a part that has inductance and capacitance already");
     }
-    if (fields.has("quality")) {
+    if (fields.has("quality") && reactive) {
         part.quality_at_hz = fields.need("quality_at", kinds::frequency, ranges::frequency);
-    } else {
+    } else if (!fields.has("quality")) {
         fields.refuse({"quality_at"}, "without 'quality'");
     }
 }

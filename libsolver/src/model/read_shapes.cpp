@@ -45,14 +45,14 @@ std::optional<Shape> read_rectangle(Fields fields) {
     const std::size_t before = fields.context().faults.count();
     Rectangle rectangle;
     rectangle.centre = fields.need_point2("center").value_or(Vec2{0, 0});
-    rectangle.size = fields.need_point2("size").value_or(Vec2{1, 1});
-    rectangle.rotation_rad = fields.number("rotation", kinds::angle, ranges::any, 0);
-    for (int i = 0; i < 2; ++i) {
-        if (rectangle.size[i] > 0) continue;
-        fields.context().faults.add(fields.where("size"),
-                                    fmt::format("{} must be greater than 0 mm in {}, but is {}", fields.named("size"),
-                                                "xy"[i], to_text(rectangle.size[i], kinds::length.dimension)));
+    if (const toml::node* node = fields.need("size", "[16, 1.2]")) {
+        const auto size = fields.context().coordinates(*node, fields.named("size"), ranges::positive_length);
+        if (size.size() == 2) rectangle.size = {size[0], size[1]};
+        if (size.size() == 3)
+            fields.context().faults.add(position_of(*node),
+                                        fmt::format("{} has three entries, not two", fields.named("size")));
     }
+    rectangle.rotation_rad = fields.number("rotation", kinds::angle, ranges::any, 0);
     return unless_faulty<Shape>(rectangle, before, fields.context());
 }
 

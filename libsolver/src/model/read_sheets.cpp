@@ -65,7 +65,7 @@ void read_permittivity(Fields& fields, Laminate& laminate) {
         {at, fields.context().quantity(*node, fields.named("permittivity"), kinds::number, permittivity_range)});
 }
 
-void read_outline(Fields& fields, Laminate& laminate) {
+void read_outline(Fields& fields, Laminate& laminate, Reading& reading) {
     if (fields.need("outline", "{ disc = { center = [0, 0], radius = 60 } }") == nullptr) return;
     const toml::table* table = fields.table("outline");
     if (table == nullptr) return;
@@ -81,8 +81,10 @@ void read_outline(Fields& fields, Laminate& laminate) {
     const toml::table* around_table = outline.table("around");
     if (around_table == nullptr) return;
     Fields around(*around_table, what, context, {"metal", "margin"});
-    laminate.outline = AroundMetal{around.need_text("metal", "\"band\""),
-                                   around.need("margin", kinds::length, ranges::not_negative_length)};
+    const AroundMetal followed{around.need_text("metal", "\"band\""),
+                               around.need("margin", kinds::length, ranges::not_negative_length)};
+    if (around.has("metal")) reading.around.push_back({followed.metal, laminate.name, around.where("metal")});
+    laminate.outline = followed;
 }
 
 void read_openings(Fields& fields, Laminate& laminate) {
@@ -105,13 +107,14 @@ void read_laminate(Fields& fields, Reading& reading) {
     read_permittivity(fields, laminate);
     laminate.loss_tangent = fields.number("loss_tangent", kinds::number, {0, 1}, 0);
     laminate.permittivity_z = fields.optional("permittivity_z", kinds::number, permittivity_range);
-    read_outline(fields, laminate);
+    read_outline(fields, laminate, reading);
     read_openings(fields, laminate);
     if (!reading.omitted(laminate.name)) reading.model.laminates.push_back(std::move(laminate));
 }
 
 double read_plane(Fields& fields, Reading& reading) {
-    const std::string key = fields.exactly_one({"on", "plane"}, "plane");
+    const std::string key = fields.exactly_one({"on", "plane"}, "plane",
+                                               "add on = \"board.top\", a face of a laminate, or plane = \"0 mm\"");
     if (key.empty()) return nan;
     if (key == "on") return read_face(*fields.get("on"), fields.named("on"), reading);
     return fields.need("plane", kinds::length, ranges::coordinate);
@@ -226,14 +229,10 @@ void read_metals(Reading& reading) {
         names.add(name, position_of(table));
         reading.omittable.insert(name);
         if (reading.omitted(name)) return;
-        if (const toml::node* edge = table.get("edge")) {
-            reading.faults().add(position_of(*edge), "'edge' is reserved for a later version",
-                                 "remove it: edges are taken as straight and bare");
-            return;
-        }
         Fields fields(
             table, item_label("metal", table, index), reading.context,
-            with({"name", "on", "plane", "cut", "material", "conductivity", "thickness", "roughness"}, shape_keys));
+            with({"name", "on", "plane", "cut", "material", "conductivity", "thickness", "roughness"}, shape_keys),
+            {"edge"});
         read_metal(fields, index, reading);
     });
 }

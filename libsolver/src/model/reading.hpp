@@ -19,12 +19,20 @@ struct Heights {
     double bottom_m;
 };
 
+/// A laminate that follows a metal, to be checked when the metals are known.
+struct Around {
+    std::string metal;
+    std::string laminate;
+    Position where;
+};
+
 struct Reading {
     Context context;
     Model& model;
     std::set<std::string> omit;
     std::map<std::string, Heights> faces{};  ///< of every laminate; NaN when faulty
     std::set<std::string> metal_names{}, wire_names{}, omittable{}, fixed{};
+    std::vector<Around> around{};
     bool metals_faulty = false;
 
     Faults& faults() { return context.faults; }

@@ -71,9 +71,12 @@ std::vector<std::string> unit_symbols();
 /// "length", "frequency", ... with "a" or "an"; products of no known kind show their base units.
 std::string kind_with_article(const Dimension& dimension);
 std::string kind_with_article(const Quantity& quantity);
+std::string kind_with_article(const Kind& kind);
 
 /// For messages: six digits with a fitting unit, as "8 mm", "868.3 MHz", "15 deg".
 std::string to_text(double value_si, const Dimension& dimension);
+/// The same; fractions as per cent.
+std::string to_text(double value_si, const Kind& kind);
 
 /// One number with an optional unit, for command options: "868.3 MHz", "2e9", "10 %". A number without unit
 /// is multiplied by `bare_scale`. Throws InputError without position; `what` names the value in its message.
