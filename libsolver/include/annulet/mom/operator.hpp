@@ -7,19 +7,19 @@
 
 #include <Eigen/Core>
 
-#include <complex>
 #include <memory>
 #include <vector>
 
 namespace annulet {
 
-struct FieldTables;   // quadrature tables of the elements (src/mom)
-struct StaticMoments; // closed-form near-field statics (src/mom)
+struct PairTables;  // quadrature tables and near-field statics (src/mom)
 
+/// Z_mn = jw mu0 <f_m, G f_n> + (1/jw eps0) <div f_m, G div f_n> + surface impedance + lumped parts, with
+/// G = exp(-jkR)/(4 pi R) [Harrington1968]; with a ground plane G acts on the images too.
 class Operator {
 public:
-    /// Computes the static moments of near pairs and the quadrature tables.
-    explicit Operator(Mesh mesh);
+    /// `parts` in the order of Mesh::lumped. Computes the static moments of near pairs and all tables.
+    explicit Operator(Mesh mesh, std::vector<Lumped> parts = {});
     ~Operator();
     Operator(Operator&&) noexcept;
     Operator& operator=(Operator&&) noexcept;
@@ -27,33 +27,35 @@ public:
     const Mesh& mesh() const { return mesh_; }
     const Basis& basis() const { return basis_; }
     int unknowns() const { return basis_.unknowns; }
+    int ports() const { return static_cast<int>(port_vectors_.cols()); }
 
-    /// Voltage vectors of unit port voltage: unknowns x ports, V_m = <f_m, V/g> over the gap.
+    /// Voltage vectors of unit port voltage: unknowns x ports, V_m = <f_m, V/g> over the gap (dimensionless).
     const Eigen::MatrixXd& port_vectors() const { return port_vectors_; }
-    /// The same for the lumped parts, unknowns x parts.
+    /// The same for the lumped parts: unknowns x parts.
     const Eigen::MatrixXd& lumped_vectors() const { return lumped_vectors_; }
+    const std::vector<Lumped>& parts() const { return parts_; }
 
-    /// Z (ohm, unknowns x unknowns, complex symmetric) at `frequency_hz`: fields, surface impedance and parts.
-    Eigen::MatrixXcd impedance_matrix(double frequency_hz) const;
-    /// The same before symmetrising, for tests of the quadrature.
-    Eigen::MatrixXcd impedance_matrix_unsymmetrised(double frequency_hz) const;
+    /// Z in ohm, unknowns x unknowns, at `frequency_hz` > 0. Complex symmetric if `symmetrise`, else as the
+    /// quadrature leaves it (a test of the quadrature).
+    Eigen::MatrixXcd impedance_matrix(double frequency_hz, bool symmetrise = true) const;
 
-    /// Impedance of the lumped parts at the frequency, by the order of `Mesh::lumped`; set from the model.
-    using PartImpedance = std::vector<std::complex<double>> (*)(double);
-    void set_lumped(std::vector<Lumped> parts) { parts_ = std::move(parts); }
+    /// Static matrices (k = 0): <f_m, G f_n> (m), unknowns x unknowns, and potential coefficients times eps0 of
+    /// unit cell charges (1/m), cells x cells.
+    Eigen::MatrixXd static_vector_potential() const;
+    Eigen::MatrixXd static_scalar_potential() const;
 
-    /// Vector potential matrix <f_m, G f_n> (m) and panel potential matrix (1/m) at wavenumber k (1/m);
-    /// `symmetrise` averages the two testing orders of near pairs.
-    Eigen::MatrixXcd vector_potential(double k_per_m, bool symmetrise = true) const;
-    Eigen::MatrixXcd scalar_potential(double k_per_m, bool symmetrise = true) const;
+    /// Sum over conductors of the sheet (or internal) impedance times <f_m, f_n>: ohm, unknowns x unknowns.
+    Eigen::SparseMatrix<std::complex<double>> surface_impedance_matrix(double frequency_hz) const;
+
+    const PairTables& pair_tables() const { return *tables_; }
 
 private:
     Mesh mesh_;
     Basis basis_;
-    Eigen::MatrixXd port_vectors_, lumped_vectors_;
     std::vector<Lumped> parts_;
-    std::unique_ptr<FieldTables> tables_;
-    std::unique_ptr<StaticMoments> statics_;
+    Eigen::MatrixXd port_vectors_, lumped_vectors_;
+    std::vector<Eigen::SparseMatrix<double>> gram_;  ///< per conductor: <f_m, f_n> on its cells
+    std::unique_ptr<PairTables> tables_;
 };
 
 }  // namespace annulet

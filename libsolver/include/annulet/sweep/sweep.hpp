@@ -12,7 +12,7 @@ namespace annulet {
 
 /// Figures that every solved frequency carries.
 struct SolveQuality {
-    double relative_residual = 0;      ///< max over ports of |v - Z I| / |v|
+    double relative_residual = 0;      ///< largest over ports of |v - Z I| / (|Z| |I| + |v|)
     double reciprocal_condition = 0;   ///< LAPACK 1-norm estimate
 };
 
@@ -27,6 +27,9 @@ struct SweepOptions {
     bool keep_currents = true;
     int threads = 0;                   ///< 0: OpenMP default
 };
+
+/// One frequency: exact fill, full factorisation. Throws NumericalError (singular).
+SweepPoint solve_point(const Operator& op, double frequency_hz, bool keep_currents = true);
 
 /// Exact fill and full factorisation at every frequency, frequencies in parallel where that is faster.
 /// `frequency_hz` ascending and > 0. Throws NumericalError (singular), Cancelled.

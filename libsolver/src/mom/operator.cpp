@@ -1,0 +1,59 @@
+#include <annulet/core/constants.hpp>
+#include <annulet/mom/operator.hpp>
+
+#include <utility>
+
+#include "mom/element.hpp"
+#include "mom/gram.hpp"
+#include "mom/pair_fill.hpp"
+#include "mom/surface_impedance.hpp"
+
+namespace annulet {
+
+using Complex = std::complex<double>;
+
+Operator::Operator(Mesh mesh, std::vector<Lumped> parts)
+    : mesh_(std::move(mesh)), basis_(make_basis(mesh_)), parts_(std::move(parts)) {
+    port_vectors_ = gap_vectors(mesh_, basis_, mesh_.ports);
+    lumped_vectors_ = gap_vectors(mesh_, basis_, mesh_.lumped);
+    gram_ = gram_matrices(mesh_, basis_);
+    tables_ = std::make_unique<PairTables>(make_pair_tables(mesh_, basis_));
+}
+
+Operator::~Operator() = default;
+Operator::Operator(Operator&&) noexcept = default;
+Operator& Operator::operator=(Operator&&) noexcept = default;
+
+Eigen::MatrixXcd Operator::impedance_matrix(double frequency_hz, bool symmetrise) const {
+    const double w = 2 * constants::pi * frequency_hz, k = w / constants::c0_m_per_s;
+    Potentials g = fill_potentials(*tables_, basis_, k, symmetrise);
+    const Eigen::SparseMatrix<double> d = basis_.divergence;
+    Eigen::MatrixXcd z = d.transpose() * (g.scalar * d).eval();
+    z *= 1.0 / Complex(0, w * constants::eps0_f_per_m);
+    z += Complex(0, w * constants::mu0_h_per_m) * g.vector;
+    z += surface_impedance_matrix(frequency_hz);
+    for (std::size_t i = 0; i < parts_.size(); ++i) {
+        const Eigen::VectorXd v = lumped_vectors_.col(static_cast<int>(i));
+        z += part_impedance(parts_[i], frequency_hz) * (v * v.transpose()).cast<Complex>();
+    }
+    if (symmetrise) z = (0.5 * (z + z.transpose())).eval();  // the products above round differently either way
+    return z;
+}
+
+Eigen::MatrixXd Operator::static_vector_potential() const {
+    return fill_potentials(*tables_, basis_, 0, true).vector.real();
+}
+
+Eigen::MatrixXd Operator::static_scalar_potential() const {
+    return fill_potentials(*tables_, basis_, 0, true).scalar.real();
+}
+
+Eigen::SparseMatrix<Complex> Operator::surface_impedance_matrix(double frequency_hz) const {
+    Eigen::SparseMatrix<Complex> sum(unknowns(), unknowns());
+    for (std::size_t i = 0; i < gram_.size(); ++i)
+        if (!mesh_.conductors[i].perfect())
+            sum += sheet_impedance(mesh_.conductors[i], frequency_hz) * gram_[i].cast<Complex>();
+    return sum;
+}
+
+}  // namespace annulet

@@ -1,0 +1,35 @@
+#include <annulet/core/diagnostics.hpp>
+#include <annulet/numerics/symmetric_solver.hpp>
+#include <annulet/sweep/sweep.hpp>
+#include <fmt/format.h>
+
+namespace annulet {
+
+SweepPoint solve_point(const Operator& op, double frequency_hz, bool keep_currents) {
+    const SymmetricSolver solver(op.impedance_matrix(frequency_hz));
+    if (!solver.ok())
+        throw NumericalError(fmt::format("no solution at {:.6g} Hz: {}", frequency_hz, solver.status().message));
+    const Eigen::MatrixXcd v = op.port_vectors().cast<std::complex<double>>();
+    SweepPoint point;
+    point.frequency_hz = frequency_hz;
+    Eigen::MatrixXcd currents = solver.solve(v);
+    point.admittance_s = v.transpose() * currents;
+    point.quality = {solver.relative_residual(currents, v), solver.reciprocal_condition()};
+    if (keep_currents) point.currents_a = std::move(currents);
+    return point;
+}
+
+std::vector<SweepPoint> sweep_every_point(const Operator& op, const std::vector<double>& frequency_hz,
+                                          const SweepOptions& options, Progress* progress) {
+    // Fill and factorisation both use all threads by themselves, so frequencies go one after the other.
+    std::vector<SweepPoint> points;
+    points.reserve(frequency_hz.size());
+    for (std::size_t i = 0; i < frequency_hz.size(); ++i) {
+        checkpoint(progress, "solve", i, frequency_hz.size());
+        points.push_back(solve_point(op, frequency_hz[i], options.keep_currents));
+    }
+    checkpoint(progress, "solve", frequency_hz.size(), frequency_hz.size());
+    return points;
+}
+
+}  // namespace annulet
