@@ -256,7 +256,7 @@ class Command(unittest.TestCase):
 
     def test_interrupt_leaves_no_file(self):
         process, terminal = self.start_on_terminal("sweep", RING, "--points", "300000")
-        self.assertIn("sweep", self.read_until(terminal, "sweep"))
+        self.assertIn("solve", self.read_until(terminal, "solve"))
         process.send_signal(signal.SIGINT)
         output, _ = process.communicate(timeout=60)
         self.assertIn("interrupted; nothing was written", self.read_until(terminal, "written"))
