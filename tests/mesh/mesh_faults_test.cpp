@@ -82,6 +82,10 @@ TEST(MeshFaults, GapsThatTouchOrOverlap) {
     model = with_across(across({0, -2 * mm}, {0, 2 * mm}, 1 * mm));
     model.lumped = {part("trim", across({1 * mm, -2 * mm}, {1 * mm, 2 * mm}, 1 * mm))};
     EXPECT_EQ(fault_text(model), "4: part 'trim' touches or overlaps port 'feed'\n");
+    model.lumped = {part("trim", across({0.1 * mm, -2 * mm}, {0.1 * mm, 2 * mm}, 0.2 * mm))};
+    EXPECT_EQ(fault_text(model), "4: part 'trim' touches or overlaps port 'feed'\n");
+    model.lumped = {part("trim", across({0, -2 * mm}, {0, 2 * mm}, 3 * mm))};
+    EXPECT_EQ(fault_text(model), "4: part 'trim' touches or overlaps port 'feed'\n");
     model.lumped = {part("trim", across({0.5 * mm, -2 * mm}, {0.5 * mm, 2 * mm}, 1 * mm))};
     EXPECT_EQ(fault_text(model), "4: part 'trim' touches or overlaps port 'feed'\n");
 }
@@ -98,6 +102,10 @@ TEST(MeshFaults, SlitsWithoutSense) {
               "3: port 'feed' does not fit: its gap of 120 mm reaches the end of metal 'line'\n");
     EXPECT_EQ(fault_text(with_across(across({0, 1 * mm}, {0, 1 * mm}, 1 * mm))),
               "3: port 'feed' has no width: both ends of its line are at (0, 1) mm\n");
+    Model loop = of({metal("band", ring(54 * mm, 8 * mm))});
+    loop.ports = {port("feed", across({50 * mm, 0}, {58 * mm, 0}, 3 * mm))};
+    loop.lumped = {part("trim", across({50 * mm, 0.1 * mm}, {58 * mm, 0.1 * mm}, 1 * mm))};
+    EXPECT_EQ(fault_text(loop), "4: part 'trim' touches or overlaps port 'feed'\n");
     Model rails = of({metal("a", box(0, 0, 100 * mm, 4 * mm)), metal("b", box(0, 8 * mm, 100 * mm, 4 * mm))});
     rails.ports = {port("feed", across({0, -2 * mm}, {0, 10 * mm}, 1 * mm))};
     EXPECT_EQ(fault_text(rails), "3: port 'feed' crosses more than one piece of metal\n");

@@ -239,6 +239,28 @@ std::vector<Piece> lay_out_metal(const Model& model, Faults& faults) {
     return pieces;
 }
 
+namespace {
+
+// The slit of the piece within which the stretch from a to b lies, or -1.
+int slit_around(const Piece& piece, const Front& a, const Front& b) {
+    const double margin = margin_of(*piece.ribbon), length = piece.ribbon->length_m();
+    for (std::size_t i = 0; i < piece.fronts.size(); ++i) {
+        if (!piece.fronts[i].enters_slit) continue;
+        const bool wraps = i + 1 == piece.fronts.size();
+        for (const double turn : {0.0, length, -length}) {
+            if (turn != 0 && !piece.loop) continue;
+            const Front enter{Front::Kind::slit_side, shifted(piece.fronts[i].s_m, turn)};
+            const Front exit{Front::Kind::slit_side,
+                             shifted(piece.fronts[wraps ? 0 : i + 1].s_m, turn + (wraps ? length : 0))};
+            if (order(enter, a, margin) == Order::before && order(b, exit, margin) == Order::before)
+                return piece.fronts[i].slit;
+        }
+    }
+    return -1;
+}
+
+}  // namespace
+
 Obstacle insert_slit(Piece& piece, const Track& track, int slit) {
     if (track.from_start() || track.to_end()) return {Obstacle::Kind::end, -1};
     const double margin = margin_of(*piece.ribbon), length = piece.ribbon->length_m();
@@ -248,7 +270,8 @@ Obstacle insert_slit(Piece& piece, const Track& track, int slit) {
     a.enters_slit = true;
     if (!piece.loop && piece.ribbon->closed() && order(piece.fronts.front(), a, margin) != Order::before)
         a.s_m = shifted(a.s_m, length), b.s_m = shifted(b.s_m, length);
-    // On a loop every turn of the other fronts must stay out of the slit, and both its sides on one side of it.
+    if (const int around = slit_around(piece, a, b); around >= 0) return {Obstacle::Kind::slit, around};
+    // On a loop every turn of the other fronts must stay out of the slit.
     const std::vector<double> turns = piece.loop ? std::vector{0.0, length, -length} : std::vector{0.0};
     for (std::size_t i = 0; i < piece.fronts.size(); ++i) {
         const Front& front = piece.fronts[i];

@@ -24,7 +24,8 @@ struct Cell {
 };
 
 /// A port or part gap: its cells carry the impressed field `field_per_m` (unit vector along the current
-/// divided by the gap length), so that V_m = V * sum_cells integral f_m . field_per_m  (design: physical gap).
+/// divided by the gap length: of a bridge from its first end to its second, of a slit from the right of its line,
+/// seen along it from its first point, to the left), so that V_m = V * sum_cells integral f_m . field_per_m  (design: physical gap).
 struct Gap {
     std::string name;
     struct Member {
