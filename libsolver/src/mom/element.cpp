@@ -98,7 +98,7 @@ MomentField moment_field(const PlanarElement& e) {
     for (auto& m : field.mean) m.setZero();
     Eigen::Matrix3d inertia = Eigen::Matrix3d::Zero();
     for (int k = 0; k < e.slots; ++k) {
-        // Mid-edge rule: exact for the quadratic integrands here [StrangFix1973].
+        // Mid-edge rule: exact for the quadratic integrands here [Strang1973].
         const std::array<Vec3, 3> mid{(e.edge_start(k) + e.edge_end(k)) / 2, (e.edge_end(k) + e.apex) / 2,
                                       (e.apex + e.edge_start(k)) / 2};
         const double w = e.triangle_area(k) / (3 * e.area_m2);

@@ -12,7 +12,7 @@ std::size_t at(int i) { return static_cast<std::size_t>(i); }
 
 using LocalGram = Eigen::Matrix4d;
 
-/// Mid-edge rule on each triangle of the fan: exact for products of affine functions [StrangFix1973].
+/// Mid-edge rule on each triangle of the fan: exact for products of affine functions [Strang1973].
 LocalGram planar_gram(const PlanarElement& e) {
     LocalGram g = LocalGram::Zero();
     for (int k = 0; k < e.slots; ++k) {

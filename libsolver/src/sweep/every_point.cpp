@@ -1,12 +1,20 @@
+#include <fmt/format.h>
 #include <annulet/core/diagnostics.hpp>
 #include <annulet/numerics/symmetric_solver.hpp>
 #include <annulet/sweep/sweep.hpp>
-#include <fmt/format.h>
+
+#include <chrono>
+#include <utility>
 
 namespace annulet {
 
+using Clock = std::chrono::steady_clock;
+
 SweepPoint solve_point(const Operator& op, double frequency_hz, bool keep_currents) {
-    const SymmetricSolver solver(op.impedance_matrix(frequency_hz));
+    const auto start = Clock::now();
+    Eigen::MatrixXcd matrix = op.impedance_matrix(frequency_hz);
+    const auto filled = Clock::now();
+    const SymmetricSolver solver(std::move(matrix));
     if (!solver.ok())
         throw NumericalError(fmt::format("no solution at {:.6g} Hz: {}", frequency_hz, solver.status().message));
     const Eigen::MatrixXcd v = op.port_vectors().cast<std::complex<double>>();
@@ -15,6 +23,8 @@ SweepPoint solve_point(const Operator& op, double frequency_hz, bool keep_curren
     Eigen::MatrixXcd currents = solver.solve(v);
     point.admittance_s = v.transpose() * currents;
     point.quality = {solver.relative_residual(currents, v), solver.reciprocal_condition()};
+    point.fill_s = std::chrono::duration<double>(filled - start).count();
+    point.factor_s = std::chrono::duration<double>(Clock::now() - filled).count();
     if (keep_currents) point.currents_a = std::move(currents);
     return point;
 }

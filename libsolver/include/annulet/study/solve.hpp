@@ -31,7 +31,8 @@ struct SolveOptions {
     bool keep_currents = false;
 };
 
-/// Wall-clock seconds. `factor_s` holds filling and factorising at each frequency, `assemble_s` what is done once.
+/// Wall-clock seconds. `assemble_s`: what is done once per geometry and filling the matrices; `factor_s`: factorising
+/// them and solving.
 struct Timing {
     double mesh_s = 0, assemble_s = 0, factor_s = 0, post_s = 0, total_s = 0;
 };

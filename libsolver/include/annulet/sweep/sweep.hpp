@@ -12,20 +12,21 @@ namespace annulet {
 
 /// Figures that every solved frequency carries.
 struct SolveQuality {
-    double relative_residual = 0;      ///< largest over ports of |v - Z I| / (|Z| |I| + |v|)
-    double reciprocal_condition = 0;   ///< LAPACK 1-norm estimate
+    double relative_residual = 0;     ///< largest over ports of |v - Z I| / (|Z| |I| + |v|)
+    double reciprocal_condition = 0;  ///< LAPACK 1-norm estimate
 };
 
 struct SweepPoint {
     double frequency_hz = 0;
-    Eigen::MatrixXcd admittance_s;     ///< ports x ports, siemens, at the gaps
-    Eigen::MatrixXcd currents_a;       ///< unknowns x ports, amperes per volt on that port, others shorted
+    Eigen::MatrixXcd admittance_s;  ///< ports x ports, siemens, at the gaps
+    Eigen::MatrixXcd currents_a;    ///< unknowns x ports, amperes per volt on that port, others shorted
     SolveQuality quality;
+    double fill_s = 0, factor_s = 0;  ///< wall-clock time of filling the matrix, of factorising and solving
 };
 
 struct SweepOptions {
     bool keep_currents = true;
-    int threads = 0;                   ///< 0: OpenMP default
+    int threads = 0;  ///< 0: OpenMP default
 };
 
 /// One frequency: exact fill, full factorisation. Throws NumericalError (singular).
