@@ -88,9 +88,14 @@ double gap_factor(const ThinLoop& loop, int n) {
     return half_angle == 0 ? 1.0 : std::sin(half_angle) / half_angle;
 }
 
-// The terms of the admittance beyond n fall as (2b/gn)^2 / n^2, so that this leaves 1e-7 of the sum.
 int terms_for(const ThinLoop& loop) {
-    return 200 + static_cast<int>(60 * loop.radius_m / loop.gap_m);
+    return 200 + static_cast<int>(1500 * std::sqrt(loop.radius_m * loop.wire_radius_m) / loop.gap_m);
+}
+
+// Beyond n >> b/a, b/g the terms of the admittance are 8j a b kb / (eta g^2 n^3) in the mean over an oscillation.
+Complex admittance_beyond(const ThinLoop& loop, double frequency_hz, double terms) {
+    return 4.0 * j * loop.wire_radius_m * loop.radius_m * loop.kb(frequency_hz) /
+           (constants::eta0_ohm * loop.gap_m * loop.gap_m * terms * terms);
 }
 
 Complex single_coefficient(Complex x, double b_over_a, int n) {
@@ -149,7 +154,7 @@ Eigen::VectorXcd loop_current(const ThinLoop& loop, double frequency_hz, int cou
 
 Complex loop_impedance(const ThinLoop& loop, double frequency_hz) {
     const Eigen::VectorXcd current = loop_current(loop, frequency_hz);
-    Complex mean = 0;
+    Complex mean = admittance_beyond(loop, frequency_hz, static_cast<double>(current.size()));
     for (int n = 0; n < current.size(); ++n) mean += gap_factor(loop, n) * current(n);
     return 1.0 / mean;
 }
