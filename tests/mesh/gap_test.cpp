@@ -163,6 +163,49 @@ TEST(Gap, ClosedPathWithASlitOverItsStart) {
         mesh, [](const Vec3& p) { return Vec3(p.x(), -p.y(), 0); }, 1e-15);
 }
 
+TEST(Gap, CutBesideAJointLeavesNoSliver) {
+    StripPath hook = path({-40 * mm, 0}, {{0, 0}}, 4 * mm);
+    hook.pieces.push_back({true, {0, 40 * mm}, {0, 20 * mm}, pi});
+    for (const double x : {-0.51, -0.5, -0.49}) {
+        Model model;
+        model.metals = {metal("hook", hook), cut("gap", box(x * mm, 0, 1 * mm, 8 * mm))};
+        model.ports = {port("feed", bridge({(x - 0.5) * mm, 0}, {(x + 0.5) * mm, 0}, 4 * mm))};
+        const Mesh mesh = make_mesh(model, {});
+        expect_sound(mesh);
+        EXPECT_GT(mesh_quality(mesh, 0).smallest_edge_m, 0.1 * mm);
+        EXPECT_NEAR(total_area(mesh) / (4 * mm * (40 * mm + 20 * pi * mm)), 1.0, 1e-7);
+    }
+}
+
+TEST(Gap, ClockwiseClosedPathWithACut) {
+    Model model;
+    const double a = 30 * mm, w = 4 * mm;
+    model.metals = {metal("frame", path({-a, -a}, {{-a, a}, {a, a}, {a, -a}, {-a, -a}}, w, true)),
+                    cut("gap", box(a, 0, 8 * mm, 2 * mm))};
+    model.ports = {port("feed", bridge({a, -1 * mm}, {a, 1 * mm}, 1 * mm))};
+    const Mesh mesh = make_mesh(model, {});
+    expect_sound(mesh);
+    EXPECT_NEAR(total_area(mesh), 8 * a * w - 2 * mm * (w - 1 * mm), 1e-15);
+    expect_mirrored(
+        mesh, [](const Vec3& p) { return Vec3(p.x(), -p.y(), 0); }, 1e-15);
+}
+
+TEST(Gap, ManyCutsAndPortsStayOrdered) {
+    Model model = {};
+    model.metals = {metal("band", ring(200 * mm, 4 * mm))};
+    for (int k = 0; k < 60; ++k) {
+        const double angle = 2 * pi * k / 60;
+        const Vec2 out(std::cos(angle), std::sin(angle)), along(-out.y(), out.x()), at = 200 * mm * out;
+        model.metals.push_back(cut("gap", box(at.x(), at.y(), 8 * mm, 1 * mm, angle), 10 + k));
+        const Bridge over = bridge(at - 0.5 * mm * along, at + 0.5 * mm * along, 1 * mm);
+        model.ports.push_back(port("p", over, 10 + k));
+    }
+    const Mesh mesh = make_mesh(model, {});
+    expect_sound(mesh);
+    ASSERT_EQ(mesh.ports.size(), 60u);
+    for (const Gap& gap : mesh.ports) EXPECT_EQ(gap.members.size(), mesh.ports[0].members.size());
+}
+
 TEST(Gap, RandomRingsWithGapsAreSound) {
     for (unsigned seed = 1; seed <= 100; ++seed) {
         SCOPED_TRACE("seed " + std::to_string(seed));

@@ -36,7 +36,7 @@ Loop circle(const Vec2& centre, double radius_m) {
     return loop;
 }
 
-std::vector<Loop> outline(const Ring& ring) {
+std::vector<Loop> loops_of(const Ring& ring) {
     return {circle(ring.centre, ring.radius_m + ring.width_m / 2),
             circle(ring.centre, ring.radius_m - ring.width_m / 2)};
 }
@@ -49,32 +49,25 @@ void add_edge(Loop& loop, const Ribbon& ribbon, double tau) {
     if (!ribbon.closed()) loop.push_back(ribbon.point(ribbon.length_m(), tau));
 }
 
-std::vector<Loop> outline(const StripPath& path) {
-    const Ribbon ribbon(path);
-    Loop right, left;
-    add_edge(right, ribbon, -1);
-    add_edge(left, ribbon, 1);
-    std::reverse(left.begin(), left.end());
-    if (ribbon.closed()) return {right, left};
-    right.insert(right.end(), left.begin(), left.end());
-    return {right};
+std::vector<Loop> loops_of(const StripPath& path) {
+    return outline(Ribbon(path));
 }
 
-std::vector<Loop> outline(const Polygon& polygon) {
+std::vector<Loop> loops_of(const Polygon& polygon) {
     return {polygon.corners};
 }
 
-std::vector<Loop> outline(const Rectangle& rectangle) {
+std::vector<Loop> loops_of(const Rectangle& rectangle) {
     const double c = std::cos(rectangle.rotation_rad), s = std::sin(rectangle.rotation_rad);
     const Vec2 x = 0.5 * rectangle.size.x() * Vec2(c, s), y = 0.5 * rectangle.size.y() * Vec2(-s, c);
     return {{rectangle.centre - x - y, rectangle.centre + x - y, rectangle.centre + x + y, rectangle.centre - x + y}};
 }
 
-std::vector<Loop> outline(const Disc& disc) {
+std::vector<Loop> loops_of(const Disc& disc) {
     return {circle(disc.centre, disc.radius_m)};
 }
 
-std::vector<Loop> outline(const Sector& sector) {
+std::vector<Loop> loops_of(const Sector& sector) {
     if (std::abs(sector.sweep_rad) > 2 * pi * (1 - 1e-9)) {
         if (sector.inner_radius_m <= 0) return {circle(sector.centre, sector.outer_radius_m)};
         return {circle(sector.centre, sector.outer_radius_m), circle(sector.centre, sector.inner_radius_m)};
@@ -89,6 +82,30 @@ std::vector<Loop> outline(const Sector& sector) {
 }
 
 }  // namespace
+
+std::vector<Loop> outline(const Ribbon& ribbon) {
+    Loop right, left;
+    add_edge(right, ribbon, -1);
+    add_edge(left, ribbon, 1);
+    std::reverse(left.begin(), left.end());
+    if (ribbon.closed()) return {right, left};
+    right.insert(right.end(), left.begin(), left.end());
+    return {right};
+}
+
+Box box_of(std::span<const Loop> loops) {
+    Box box{loops[0][0], loops[0][0]};
+    for (const Loop& loop : loops)
+        for (const Vec2& p : loop) {
+            box.low = box.low.cwiseMin(p);
+            box.high = box.high.cwiseMax(p);
+        }
+    return box;
+}
+
+bool apart(const Box& a, const Box& b, double margin_m) {
+    return ((a.low - b.high).array() > margin_m).any() || ((b.low - a.high).array() > margin_m).any();
+}
 
 double distance_to(std::span<const Loop> loops, const Vec2& p) {
     double nearest = std::numeric_limits<double>::infinity();
@@ -132,7 +149,7 @@ double union_area(std::span<const Loop> loops, double grain_m) {
 }
 
 Region::Region(Shape shape)
-    : shape_(std::move(shape)), loops_(std::visit([](const auto& kind) { return outline(kind); }, shape_)) {}
+    : shape_(std::move(shape)), loops_(std::visit([](const auto& kind) { return loops_of(kind); }, shape_)) {}
 
 double Region::level(const Vec2& p) const {
     if (const auto* ring = std::get_if<Ring>(&shape_))

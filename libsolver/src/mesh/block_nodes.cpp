@@ -4,6 +4,8 @@
 #include <cmath>
 #include <optional>
 
+#include "mesh/layout.hpp"
+
 namespace annulet {
 
 namespace {
@@ -20,10 +22,17 @@ std::optional<OnPiece> single_arc(const Ribbon& ribbon, double from_m, double to
     const std::size_t piece = ribbon.centre().piece_at(middle - shift);
     const Curve::Piece& part = ribbon.centre().pieces()[piece];
     if (!part.is_arc) return std::nullopt;
-    const double slack = 1e-9 * length;
+    const double slack = 2 * smooth_joint_margin * ribbon.narrowest_m();
     const bool within = from_m - shift >= part.start_m - slack && to_m - shift <= part.start_m + part.length_m + slack;
     if (!within && ribbon.has_seam()) return std::nullopt;
     return OnPiece{piece, shift};
+}
+
+// An end of the block may lie a little beyond the arc, on the piece next to it.
+void move_to(Ribbon::Sample& at, const Vec2& p) {
+    const Vec2 arm = p - at.centre, radial(std::cos(at.angle_rad), std::sin(at.angle_rad));
+    at.angle_rad += std::atan2(cross(radial, arm), radial.dot(arm));
+    at.radius_m = arm.norm();
 }
 
 }  // namespace
@@ -71,8 +80,10 @@ std::vector<Vec2> block_nodes(const Ribbon& ribbon, double tau, double from_m, d
     std::vector<double> angles, radii;
     Vec2 centre(0, 0);
     for (const double x : fractions) {
-        const double u = ((1 - x) * from_m + x * to_m - arc->shift_m - part.start_m) / part.length_m;
-        const Ribbon::Sample at = ribbon.sample_on(arc->piece, u, tau);
+        const double along = (1 - x) * from_m + x * to_m;
+        const double u = (along - arc->shift_m - part.start_m) / part.length_m;
+        Ribbon::Sample at = ribbon.sample_on(arc->piece, u, tau);
+        if (ribbon.has_seam() && (u < 0 || u > 1)) move_to(at, ribbon.point(along, tau));
         centre = at.centre;
         angles.push_back(at.angle_rad);
         radii.push_back(at.radius_m);

@@ -10,21 +10,6 @@ namespace annulet {
 
 namespace {
 
-struct Box {
-    Vec2 low, high;
-};
-
-Box box_of(const std::vector<Loop>& loops) {
-    Box box{loops[0][0], loops[0][0]};
-    for (const Loop& loop : loops)
-        for (const Vec2& p : loop) box.low = box.low.cwiseMin(p), box.high = box.high.cwiseMax(p);
-    return box;
-}
-
-bool apart(const Box& a, const Box& b, double margin) {
-    return ((a.low - b.high).array() > margin).any() || ((b.low - a.high).array() > margin).any();
-}
-
 constexpr double grain_m = 1e-9;
 
 double perimeter(const std::vector<Loop>& loops) {
@@ -141,8 +126,9 @@ private:
         for (const Landing& of_a : {a.from, a.to})
             for (const Landing& of_b : {b.from, b.to}) clashing = clashing || overlap_on_end(of_a, of_b);
         const std::vector<Loop> both{corners(layout_, a), corners(layout_, b)};
-        if (std::abs(plane(a) - plane(b)) <= 1e-9)
-            clashing = clashing || overlaps(both, std::min(a.width_m, b.width_m));
+        const bool near = std::abs(plane(a) - plane(b)) <= 1e-9 &&
+                          !apart(box_of(std::span(both).first(1)), box_of(std::span(both).last(1)), 0);
+        clashing = clashing || (near && overlaps(both, std::min(a.width_m, b.width_m)));
         if (clashing) clash(a.place, b.place);
     }
 
@@ -153,8 +139,9 @@ private:
             faults_.add(place.where, place.what + " has a bridge whose edges cross");
             return;
         }
+        const Box box = box_of(std::span(&quad, 1));
         for (std::size_t k = 0; k < layout_.pieces.size(); ++k) {
-            if (std::abs(metal(k).plane_m - plane(span)) > 1e-9) continue;
+            if (std::abs(metal(k).plane_m - plane(span)) > 1e-9 || apart(box, boxes_[k], 0)) continue;
             std::vector<Loop> both = layout_.pieces[k].outline;
             both.push_back(quad);
             const double tolerance = std::min(span.width_m, span.length_m);

@@ -37,6 +37,11 @@ double margin_of(const Ribbon& ribbon) {
     return 1e-6 * ribbon.narrowest_m();
 }
 
+// A smooth joint this near to another front is not worth a row of cells.
+double joint_margin(const Ribbon& ribbon, const Front& joint) {
+    return joint.sharp ? margin_of(ribbon) : smooth_joint_margin * ribbon.narrowest_m();
+}
+
 // Stretches taken away from a strip, overlapping ones merged, in order.
 struct Removed {
     SAt enter, exit;
@@ -195,7 +200,7 @@ bool in_slit(const Piece& piece, const Front& joint, bool& crossed) {
 }
 
 bool fits(const Piece& piece, const Front& joint, bool& crossed) {
-    const double margin = margin_of(*piece.ribbon);
+    const double margin = joint_margin(*piece.ribbon, joint);
     if (in_slit(piece, joint, crossed)) return false;
     for (std::size_t i = 0; i < piece.fronts.size(); ++i) {
         const Front& front = piece.fronts[i];

@@ -14,6 +14,9 @@
 
 namespace annulet {
 
+/// In strip widths: how near a front may come to a smooth joint of the centre line before that one is passed over.
+inline constexpr double smooth_joint_margin = 0.02;
+
 /// A line across a strip on which nodes must lie.
 struct Front {
     enum class Kind { free_end, cut_end, joint, slit_side };

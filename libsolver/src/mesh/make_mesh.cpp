@@ -13,8 +13,9 @@ namespace {
 constexpr double most_unknowns = 2e6;  // beyond, even the mesh alone is of no use
 
 void check_options(const MeshOptions& options) {
-    if (!(options.cells_per_wavelength > 0) || options.cells_across < 1 || !(options.refine > 0) ||
-        !std::isfinite(options.refine) || !(options.edge_cell_fraction < 0.5) || !(options.top_frequency_hz >= 0))
+    if (!(options.cells_per_wavelength > 0) || options.cells_across < 1 || options.cells_across > 1000 ||
+        !(options.refine > 0) || !std::isfinite(options.refine) || !(options.edge_cell_fraction < 0.5) ||
+        !(options.top_frequency_hz >= 0))
         throw std::invalid_argument("mesh options out of range");
 }
 

@@ -10,7 +10,7 @@ namespace {
 
 constexpr double edge_tau = 1 - 1e-7;  // probes at the very edge would sit on outlines drawn along it
 constexpr int probes = 17;
-constexpr int evaluation_limit = 100000;
+constexpr int evaluation_limit = 20000;
 
 struct Interval {
     double enter, exit;
@@ -143,21 +143,14 @@ std::optional<Track::Side> side_of(const std::vector<Interval>& row, double end_
     return side;
 }
 
-bool outline_enters(const Ribbon& ribbon, const Region& region) {
-    const auto& pieces = ribbon.centre().pieces();
-    StripPath path;
-    path.start = pieces[0].from;
-    for (const auto& piece : pieces) path.pieces.push_back({piece.is_arc, piece.to, piece.centre, piece.sweep_rad});
-    path.width_start_m = ribbon.width_m(0);
-    path.width_end_m = ribbon.width_m(ribbon.length_m());
-    path.closed = ribbon.closed();
-    const Region strip{Shape(path)};
-    const double margin = 1e-3 * ribbon.narrowest_m();
+bool outline_enters(const std::vector<Loop>& strip, const Region& region, double margin) {
     for (const Loop& loop : region.loops())
         for (std::size_t i = 0; i < loop.size(); ++i) {
             const Vec2 &a = loop[i], &b = loop[(i + 1) % loop.size()];
-            for (const double u : {0.0, 0.25, 0.5, 0.75})
-                if (strip.level(a + u * (b - a)) < -margin) return true;
+            for (const double u : {0.0, 0.25, 0.5, 0.75}) {
+                const Vec2 p = a + u * (b - a);
+                if (inside(strip, p) && distance_to(strip, p) > margin) return true;
+            }
         }
     return false;
 }
@@ -187,6 +180,8 @@ double Track::solve(const Side& side, double tau) const {
 }
 
 Crossings find_crossings(std::shared_ptr<const Ribbon> ribbon, std::shared_ptr<const Region> region) {
+    const std::vector<Loop> strip = outline(*ribbon);
+    if (apart(box_of(strip), box_of(region->loops()), 0.1 * ribbon->widest_m())) return {};
     std::vector<std::vector<Interval>> lines;
     std::size_t most = 0, whole = 0;
     for (const double tau : probe_taus()) {
@@ -195,7 +190,8 @@ Crossings find_crossings(std::shared_ptr<const Ribbon> ribbon, std::shared_ptr<c
         if (covers_whole(lines.back(), ribbon->length_m())) ++whole;
     }
     if (whole == lines.size()) return {Crossing::everything, {}};
-    if (most == 0) return {outline_enters(*ribbon, *region) ? Crossing::partial : Crossing::none, {}};
+    if (most == 0)
+        return {outline_enters(strip, *region, 1e-3 * ribbon->narrowest_m()) ? Crossing::partial : Crossing::none, {}};
     const bool equal = std::all_of(lines.begin(), lines.end(), [&](const auto& line) { return line.size() == most; });
     const auto table = equal && whole == 0 ? follow(lines, *ribbon) : std::nullopt;
     if (!table) return {Crossing::partial, {}};

@@ -1,6 +1,7 @@
 // Inside or outside of a planar shape, and how far from its edge at least.
 #pragma once
 
+#include <annulet/geometry/ribbon.hpp>
 #include <annulet/geometry/shapes.hpp>
 
 #include <span>
@@ -9,6 +10,16 @@
 namespace annulet {
 
 using Loop = std::vector<Vec2>;  ///< corners in order, not repeated at the end
+
+/// Bounding box with its sides along the axes.
+struct Box {
+    Vec2 low{0, 0};
+    Vec2 high{0, 0};
+};
+/// Of at least one loop with at least one corner.
+Box box_of(std::span<const Loop> loops);
+/// True if more than `margin_m` lies between the boxes.
+bool apart(const Box& a, const Box& b, double margin_m);
 
 /// Distance of `p` to the outline (m).
 double distance_to(std::span<const Loop> loops, const Vec2& p);
@@ -19,6 +30,9 @@ double signed_area(const Loop& loop);
 
 /// Area (m^2) of the union of the loops by winding number not zero, in steps of `grain_m`.
 double union_area(std::span<const Loop> loops, double grain_m);
+
+/// Outline of a strip with chords of at most one degree.
+std::vector<Loop> outline(const Ribbon& ribbon);
 
 /// A shape without flaw, ready to be asked.
 class Region {
