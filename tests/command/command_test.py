@@ -11,6 +11,7 @@ import signal
 import subprocess
 import tempfile
 import time
+import tomllib
 import unittest
 
 PROGRAM = os.environ["ANNULET"]
@@ -103,6 +104,23 @@ class Command(unittest.TestCase):
             for there, back in zip(s["upstream"]["downstream"][part], s["downstream"]["upstream"][part]):
                 self.assertAlmostEqual(there, back, delta=1e-6)
         self.assertGreater(max(map(abs, s["upstream"]["downstream"]["real"])), 1e-6)
+
+    def test_models_meet_their_expected_values(self):
+        expected = tomllib.loads((MODELS / "expected.toml").read_text())
+        names = sorted(path.stem for path in MODELS.glob("*.toml") if path.stem != "expected")
+        self.assertEqual(names, sorted(expected))
+        for name in names:
+            result = self.run_program("sweep", MODELS / f"{name}.toml", "--json", "-", "--points", "21")
+            self.assertEqual(result.returncode, 0, result.stderr)
+            found = json.loads(result.stdout)["resonances"]
+            for port, kinds in expected[name].items():
+                for kind, value in kinds.items():
+                    with self.subTest(model=name, port=port, kind=kind):
+                        first = next(r for r in found if (r["port"], r["kind"]) == (port, kind))
+                        for quantity, tolerance in (("frequency_hz", "frequency_fraction"),
+                                                    ("resistance_ohm", "resistance_fraction")):
+                            self.assertAlmostEqual(first[quantity], value[quantity],
+                                                   delta=value[quantity] * value[tolerance])
 
     def test_quiet_says_nothing_and_writes_all(self):
         result = self.sweep("--quiet")

@@ -199,7 +199,7 @@ private:
     double refine_;
     std::vector<Ends> ends_;
     Mesh mesh_;
-    Faults faults_;
+    MeshFaults faults_;
     Position bent_{-1, -1};
 };
 

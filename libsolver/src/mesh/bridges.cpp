@@ -14,7 +14,7 @@ constexpr double snap_fraction = 0.01;  // of the width: a bridge edge this near
 class BridgePlacer {
 public:
     BridgePlacer(const Model& model, const Layout& layout, int place, const Place& drawn, const Bridge& bridge,
-                 Faults& faults)
+                 MeshFaults& faults)
         : model_(model),
           layout_(layout),
           place_(place),
@@ -147,14 +147,14 @@ private:
     int place_;
     const Place& drawn_;
     const Bridge& bridge_;
-    Faults& faults_;
+    MeshFaults& faults_;
     Vec2 a_, b_;
 };
 
 }  // namespace
 
 std::optional<Span> place_bridge(const Model& model, const Layout& layout, int place, const Place& drawn,
-                                 const Bridge& bridge, Faults& faults) {
+                                 const Bridge& bridge, MeshFaults& faults) {
     return BridgePlacer(model, layout, place, drawn, bridge, faults).placed();
 }
 

@@ -8,10 +8,10 @@ namespace annulet {
 
 /// Where the bridge lands on the ends of the metal; nothing and a fault if it does not.
 std::optional<Span> place_bridge(const Model& model, const Layout& layout, int place, const Place& drawn,
-                                 const Bridge& bridge, Faults& faults);
+                                 const Bridge& bridge, MeshFaults& faults);
 
 /// Puts the slit into its piece of `layout`, or a fault.
 void place_slit(const Model& model, Layout& layout, int place, const Place& drawn, const Across& across,
-                Faults& faults);
+                MeshFaults& faults);
 
 }  // namespace annulet

@@ -42,7 +42,7 @@ bool touches(const std::vector<Loop>& a, const std::vector<Loop>& b, const Box& 
 
 class ContactCheck {
 public:
-    ContactCheck(const Model& model, const Layout& layout, Faults& faults)
+    ContactCheck(const Model& model, const Layout& layout, MeshFaults& faults)
         : model_(model), layout_(layout), faults_(faults), places_(places_of(model)) {
         for (const Piece& piece : layout.pieces) boxes_.push_back(box_of(piece.outline));
         for (const Join& join : layout.joins) joined_.insert(std::minmax(join.from.piece, join.to.piece));
@@ -163,7 +163,7 @@ private:
 
     const Model& model_;
     const Layout& layout_;
-    Faults& faults_;
+    MeshFaults& faults_;
     std::vector<Place> places_;
     std::vector<Box> boxes_;
     std::set<std::pair<int, int>> joined_;
@@ -179,7 +179,7 @@ Loop corners(const Layout& layout, const Span& span) {
             point(span.from, span.from.tau_b)};
 }
 
-void check_contacts(const Model& model, const Layout& layout, Faults& faults) {
+void check_contacts(const Model& model, const Layout& layout, MeshFaults& faults) {
     ContactCheck check(model, layout, faults);
     check.pieces();
     check.spans();

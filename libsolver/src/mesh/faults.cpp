@@ -11,7 +11,7 @@ double clean(double metres) {
 }
 }  // namespace
 
-void Faults::throw_if_any() {
+void MeshFaults::throw_if_any() {
     if (list_.empty()) return;
     std::stable_sort(list_.begin(), list_.end(),
                      [](const Diagnostic& a, const Diagnostic& b) { return a.where < b.where; });

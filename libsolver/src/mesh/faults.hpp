@@ -1,4 +1,4 @@
-// Faults collected over the whole model, and numbers worded for people.
+// MeshFaults collected over the whole model, and numbers worded for people.
 #pragma once
 
 #include <fmt/format.h>
@@ -10,7 +10,7 @@
 
 namespace annulet {
 
-class Faults {
+class MeshFaults {
 public:
     void add(const Position& where, std::string message, std::string help = {}) {
         list_.push_back({Severity::error, where, std::move(message), std::move(help)});

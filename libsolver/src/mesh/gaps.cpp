@@ -13,7 +13,7 @@ bool same(const Vec2& a, const Vec2& b, double within_m) {
     return (a - b).norm() <= within_m;
 }
 
-void check_unsupported(const Model& model, Faults& faults) {
+void check_unsupported(const Model& model, MeshFaults& faults) {
     for (const Wire& wire : model.wires)
         faults.add(wire.where, fmt::format("wire '{}' is not yet meshed", wire.name), "leave it out for now");
     for (const Via& via : model.vias)
@@ -64,7 +64,7 @@ std::vector<Join> find_joins(const Model& model, const std::vector<Piece>& piece
     return joins;
 }
 
-Layout lay_out(const Model& model, Faults& faults) {
+Layout lay_out(const Model& model, MeshFaults& faults) {
     Layout layout;
     check_unsupported(model, faults);
     layout.pieces = lay_out_metal(model, faults);

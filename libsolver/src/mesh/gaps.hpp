@@ -57,13 +57,13 @@ struct Layout {
 };
 
 /// Everything on the metal, faults collected.
-Layout lay_out(const Model& model, Faults& faults);
+Layout lay_out(const Model& model, MeshFaults& faults);
 
 /// Ends of pieces that meet over their full width.
 std::vector<Join> find_joins(const Model& model, const std::vector<Piece>& pieces);
 
 /// Pieces that overlap or touch elsewhere than at joined ends; gaps that touch or overlap.
-void check_contacts(const Model& model, const Layout& layout, Faults& faults);
+void check_contacts(const Model& model, const Layout& layout, MeshFaults& faults);
 
 /// The four corners of a span, counter-clockwise.
 Loop corners(const Layout& layout, const Span& span);

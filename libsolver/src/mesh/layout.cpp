@@ -68,7 +68,7 @@ void merge(std::vector<Removed>& removed) {
 
 class Divider {
 public:
-    Divider(const Model& model, std::size_t metal, std::shared_ptr<const Ribbon> ribbon, Faults& faults)
+    Divider(const Model& model, std::size_t metal, std::shared_ptr<const Ribbon> ribbon, MeshFaults& faults)
         : model_(model), metal_(metal), ribbon_(std::move(ribbon)), faults_(faults) {}
 
     void divide(std::vector<Piece>& pieces) {
@@ -162,7 +162,7 @@ private:
     const Model& model_;
     std::size_t metal_;
     std::shared_ptr<const Ribbon> ribbon_;
-    Faults& faults_;
+    MeshFaults& faults_;
     std::vector<Removed> removed_;
     bool gone_ = false;
 };
@@ -223,7 +223,7 @@ ConductorKind classify(const Shape& shape) {
     return ribbon_of(shape) ? ConductorKind::strip_like : ConductorKind::general;
 }
 
-std::vector<Piece> lay_out_metal(const Model& model, Faults& faults) {
+std::vector<Piece> lay_out_metal(const Model& model, MeshFaults& faults) {
     std::vector<Piece> pieces;
     for (std::size_t k = 0; k < model.metals.size(); ++k) {
         const Metal& metal = model.metals[k];
@@ -295,7 +295,7 @@ Obstacle insert_slit(Piece& piece, const Track& track, int slit) {
     return {};
 }
 
-void finish_fronts(Piece& piece, const Model& model, Faults& faults) {
+void finish_fronts(Piece& piece, const Model& model, MeshFaults& faults) {
     const Metal& metal = model.metals[static_cast<std::size_t>(piece.metal)];
     std::vector<Front> kept;
     for (Front& joint : joints_of(piece)) {

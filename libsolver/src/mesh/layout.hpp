@@ -51,7 +51,7 @@ struct Piece {
 enum class ConductorKind { strip_like, general };
 
 /// Divides the metals by the cuts listed after them. Metals at fault are left out of the result.
-std::vector<Piece> lay_out_metal(const Model& model, Faults& faults);
+std::vector<Piece> lay_out_metal(const Model& model, MeshFaults& faults);
 
 /// Strip-like shapes: ring, path, rectangle, sector with a hole.
 ConductorKind classify(const Shape& shape);
@@ -68,7 +68,7 @@ Obstacle insert_slit(Piece& piece, const Track& track, int slit);
 
 /// Adds the joints of the centre line as fronts, drops smooth ones that another front crosses, and reports corners
 /// that one crosses; sets block_slit and the outline. To be called when all slits are in.
-void finish_fronts(Piece& piece, const Model& model, Faults& faults);
+void finish_fronts(Piece& piece, const Model& model, MeshFaults& faults);
 
 /// Outline of a piece from its ends alone.
 void set_outline(Piece& piece);

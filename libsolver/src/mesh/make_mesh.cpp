@@ -23,7 +23,7 @@ void check_options(const MeshOptions& options) {
 
 Mesh make_mesh(const Model& model, const MeshOptions& options) {
     check_options(options);
-    Faults faults;
+    MeshFaults faults;
     Layout layout = lay_out(model, faults);
     faults.throw_if_any();
     std::vector<CrossGrid> across = cross_grids(layout, options);

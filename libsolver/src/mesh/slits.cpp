@@ -9,7 +9,8 @@ namespace {
 
 class SlitPlacer {
 public:
-    SlitPlacer(const Model& model, Layout& layout, int place, const Place& drawn, const Across& across, Faults& faults)
+    SlitPlacer(const Model& model, Layout& layout, int place, const Place& drawn, const Across& across,
+               MeshFaults& faults)
         : model_(model),
           layout_(layout),
           place_(place),
@@ -104,14 +105,14 @@ private:
     int place_;
     const Place& drawn_;
     const Across& across_;
-    Faults& faults_;
+    MeshFaults& faults_;
     Vec2 a_, b_;
 };
 
 }  // namespace
 
 void place_slit(const Model& model, Layout& layout, int place, const Place& drawn, const Across& across,
-                Faults& faults) {
+                MeshFaults& faults) {
     SlitPlacer(model, layout, place, drawn, across, faults).put();
 }
 
