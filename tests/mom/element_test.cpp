@@ -1,7 +1,7 @@
 #include "mom/element.hpp"
 
-#include <annulet/mom/basis.hpp>
 #include <gtest/gtest.h>
+#include <annulet/mom/basis.hpp>
 
 #include "support/test_meshes.hpp"
 

@@ -1,9 +1,9 @@
+#include <gtest/gtest.h>
+#include <omp.h>
 #include <annulet/analysis/far_field.hpp>
 #include <annulet/core/constants.hpp>
 #include <annulet/numerics/blas_threads.hpp>
 #include <annulet/sweep/sweep.hpp>
-#include <gtest/gtest.h>
-#include <omp.h>
 
 #include <Eigen/LU>
 

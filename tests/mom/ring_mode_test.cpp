@@ -1,9 +1,9 @@
 // Strip rings against the thin circular loop of equivalent radius w/4 [Storer1956, Wu1962].
 #include "support/ring_mode.hpp"
 
+#include <gtest/gtest.h>
 #include <annulet/core/constants.hpp>
 #include <annulet/sweep/sweep.hpp>
-#include <gtest/gtest.h>
 
 #include <annulet/numerics/roots.hpp>
 #include <cmath>

@@ -1,8 +1,8 @@
 #include "mom/static_potential.hpp"
 
+#include <gtest/gtest.h>
 #include <annulet/mom/operator.hpp>
 #include <annulet/numerics/quadrature.hpp>
-#include <gtest/gtest.h>
 
 #include "mom/outer_rule.hpp"
 #include "mom/static_pairs.hpp"

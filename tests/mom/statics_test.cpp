@@ -1,7 +1,7 @@
 // Capacitance and inductance from the same static matrices that the full solution uses: power balance does not see
 // reactance, these do.
-#include <annulet/core/constants.hpp>
 #include <gtest/gtest.h>
+#include <annulet/core/constants.hpp>
 
 #include "support/reference_values.hpp"
 #include "support/ring_mode.hpp"
@@ -13,7 +13,9 @@ namespace {
 using test::cosine_nodes;
 
 /// Both meshes halve all cells of cosine spacing: error of order 2, so Richardson takes off a third of the change.
-double extrapolated(double coarse, double fine) { return fine + (fine - coarse) / 3; }
+double extrapolated(double coarse, double fine) {
+    return fine + (fine - coarse) / 3;
+}
 
 const double unit = 4 * constants::pi * constants::eps0_f_per_m;
 
@@ -27,7 +29,9 @@ TEST(Statics, CapacitanceOfSquarePlate) {
     EXPECT_NEAR(extrapolated(plate_capacitance(6), plate_capacitance(12)) / reference, 1, 0.002);
 }
 
-double disc_capacitance(int n) { return test::capacitance_f(Operator(test::disc(1, n))) / unit; }
+double disc_capacitance(int n) {
+    return test::capacitance_f(Operator(test::disc(1, n))) / unit;
+}
 
 // Kelvin: C = 8 eps0 a, values.json `cap_disc`. The disc is a polygon of chords here, area not corrected: order 2 too.
 TEST(Statics, CapacitanceOfDisc) {

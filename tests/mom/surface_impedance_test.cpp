@@ -1,7 +1,7 @@
 #include "mom/surface_impedance.hpp"
 
-#include <annulet/core/constants.hpp>
 #include <gtest/gtest.h>
+#include <annulet/core/constants.hpp>
 
 #include <cmath>
 

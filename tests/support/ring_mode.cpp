@@ -27,8 +27,7 @@ std::vector<Flow> around(const Mesh& mesh, const Basis& basis, int rows) {
         const int slot = basis.first_slot[c] + 2;
         for (Eigen::SparseMatrix<double, Eigen::RowMajor>::InnerIterator i(basis.slots, slot); i; ++i) {
             const Vec3 p = mesh.nodes[static_cast<std::size_t>(mesh.cells[c].node[2])];
-            out[static_cast<std::size_t>(i.col())] = {static_cast<int>(c) % rows, i.value(),
-                                                      std::atan2(p.y(), p.x())};
+            out[static_cast<std::size_t>(i.col())] = {static_cast<int>(c) % rows, i.value(), std::atan2(p.y(), p.x())};
         }
     }
     return out;
@@ -63,7 +62,8 @@ double driven_mode_frequency_hz(Mesh annulus, double from_hz, double to_hz) {
         Vec3 centre = Vec3::Zero();
         for (int n : annulus.cells[c].node) centre += annulus.nodes[static_cast<std::size_t>(n)] / 4;
         const double r2 = centre.squaredNorm();
-        drive.members.push_back({static_cast<int>(c), Vec3(-centre.y(), centre.x(), 0) * (centre.x() / (r2 * std::sqrt(r2)))});
+        drive.members.push_back(
+            {static_cast<int>(c), Vec3(-centre.y(), centre.x(), 0) * (centre.x() / (r2 * std::sqrt(r2)))});
     }
     annulus.ports = {drive};
     const Operator op(std::move(annulus));

@@ -20,7 +20,9 @@ void add_cells(Mesh& mesh, int rows, int columns, bool closed) {
         }
 }
 
-double area_factor(double dphi) { return std::sqrt(dphi / std::sin(dphi)); }
+double area_factor(double dphi) {
+    return std::sqrt(dphi / std::sin(dphi));
+}
 
 }  // namespace
 
@@ -36,7 +38,9 @@ std::vector<double> cosine_nodes(int n) {
     return x;
 }
 
-std::vector<double> edge_nodes(double edge) { return {0, edge, 1 - edge, 1}; }
+std::vector<double> edge_nodes(double edge) {
+    return {0, edge, 1 - edge, 1};
+}
 
 Mesh annulus(double r_in_m, double r_out_m, int around, const std::vector<double>& across, double z_m) {
     Mesh mesh;
@@ -73,8 +77,7 @@ Mesh ring_with_port(double mean_radius_m, double width_m, double gap_m, int gap_
             const double angle = -half + 2 * half * (i + 0.5) / gap_cells;
             const double middle = 0.5 * (across[static_cast<std::size_t>(j)] + across[static_cast<std::size_t>(j + 1)]);
             const double r = mean_radius_m + (middle - 0.5) * width_m;
-            gap.members.push_back(
-                {i * (columns - 1) + j, Vec3(-std::sin(angle), std::cos(angle), 0) / (2 * half * r)});
+            gap.members.push_back({i * (columns - 1) + j, Vec3(-std::sin(angle), std::cos(angle), 0) / (2 * half * r)});
         }
     mesh.ports.push_back(gap);
     return mesh;

@@ -12,7 +12,9 @@ namespace annulet {
 
 namespace {
 
-std::size_t at(int i) { return static_cast<std::size_t>(i); }
+std::size_t at(int i) {
+    return static_cast<std::size_t>(i);
+}
 
 using Key = std::pair<int, int>;
 

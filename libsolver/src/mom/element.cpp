@@ -9,9 +9,13 @@ namespace annulet {
 
 namespace {
 
-std::size_t at(int i) { return static_cast<std::size_t>(i); }
+std::size_t at(int i) {
+    return static_cast<std::size_t>(i);
+}
 
-double area(const Vec3& a, const Vec3& b, const Vec3& c) { return 0.5 * (b - a).cross(c - a).norm(); }
+double area(const Vec3& a, const Vec3& b, const Vec3& c) {
+    return 0.5 * (b - a).cross(c - a).norm();
+}
 
 /// Constant part of the Raviart-Thomas function with outward fluxes `flux[j]` through the edges opposite to
 /// corners `v[j]`: f = sum_j flux_j (r - v_j) / (2 area)  [RaviartThomas1977].
@@ -58,7 +62,9 @@ void fill_triangle(PlanarElement& e) {
 
 }  // namespace
 
-double PlanarElement::triangle_area(int k) const { return area(edge_start(k), edge_end(k), apex); }
+double PlanarElement::triangle_area(int k) const {
+    return area(edge_start(k), edge_end(k), apex);
+}
 
 double PlanarElement::diameter() const {
     double longest = 0;

@@ -11,13 +11,13 @@ namespace annulet {
 
 /// Triangle k of the fan has the corners edge_start[k], edge_end[k], apex.
 struct PlanarElement {
-    int slots = 0;                                    ///< 3 or 4
+    int slots = 0;  ///< 3 or 4
     std::array<Vec3, 4> corner;
-    Vec3 apex{0, 0, 0};                               ///< crossing of the diagonals, or the centroid of a triangle
+    Vec3 apex{0, 0, 0};  ///< crossing of the diagonals, or the centroid of a triangle
     Vec3 normal{0, 0, 1};
     double area_m2 = 0;
-    std::array<std::array<Vec3, 4>, 4> constant;      ///< [triangle of the fan][slot]: c (1/m)
-    double slope_per_m2 = 0;                          ///< d = 1 / (2 area)
+    std::array<std::array<Vec3, 4>, 4> constant;  ///< [triangle of the fan][slot]: c (1/m)
+    double slope_per_m2 = 0;                      ///< d = 1 / (2 area)
 
     const Vec3& edge_start(int k) const { return corner[static_cast<std::size_t>(k)]; }
     const Vec3& edge_end(int k) const { return corner[static_cast<std::size_t>((k + 1) % slots)]; }
@@ -27,7 +27,7 @@ struct PlanarElement {
         return constant[static_cast<std::size_t>(k)][static_cast<std::size_t>(slot)] + slope_per_m2 * r;
     }
     double diameter() const;
-    PlanarElement mirrored(double plane_z_m) const;   ///< mirror image, local functions mirrored with it
+    PlanarElement mirrored(double plane_z_m) const;  ///< mirror image, local functions mirrored with it
 };
 
 /// On a quadrilateral the local functions are the mean of the two built from the triangles of either diagonal,

@@ -26,8 +26,9 @@ struct Buffers {
     alignas(64) double im[9][lane_chunk];
 };
 
-ANNULET_CLONES void green_whole(const double* __restrict x, const double* __restrict y, const double* __restrict z, const double* __restrict radius2,
-                                const double* at, double test_radius2, double k, int count, double* __restrict re, double* __restrict im) {
+ANNULET_CLONES void green_whole(const double* __restrict x, const double* __restrict y, const double* __restrict z,
+                                const double* __restrict radius2, const double* at, double test_radius2, double k,
+                                int count, double* __restrict re, double* __restrict im) {
     for (int e = 0; e < count; ++e) {
         const double dx = x[e] - at[0], dy = y[e] - at[1], dz = z[e] - at[2];
         // Coincident points occur only for near pairs, whose result here is discarded.
@@ -38,9 +39,9 @@ ANNULET_CLONES void green_whole(const double* __restrict x, const double* __rest
     }
 }
 
-ANNULET_CLONES void green_remainder(const double* __restrict x, const double* __restrict y, const double* __restrict z, const double* __restrict radius2,
-                                    const double* at, double test_radius2, double k, int count, double* __restrict re,
-                                    double* __restrict im) {
+ANNULET_CLONES void green_remainder(const double* __restrict x, const double* __restrict y, const double* __restrict z,
+                                    const double* __restrict radius2, const double* at, double test_radius2, double k,
+                                    int count, double* __restrict re, double* __restrict im) {
     for (int e = 0; e < count; ++e) {
         const double dx = x[e] - at[0], dy = y[e] - at[1], dz = z[e] - at[2];
         const double r = std::sqrt(dx * dx + dy * dy + dz * dz + radius2[e] + test_radius2 + 1e-60);
@@ -52,8 +53,8 @@ ANNULET_CLONES void green_remainder(const double* __restrict x, const double* __
 }
 
 /// acc += f * green over the lanes, complex.
-ANNULET_CLONES void contract_source(const double* __restrict f, std::size_t stride, int points, const Buffers& g, int count,
-                                    double* __restrict re, double* __restrict im) {
+ANNULET_CLONES void contract_source(const double* __restrict f, std::size_t stride, int points, const Buffers& g,
+                                    int count, double* __restrict re, double* __restrict im) {
     for (int e = 0; e < count; ++e) re[e] = im[e] = 0;
     for (int j = 0; j < points; ++j) {
         const double* fj = f + static_cast<std::size_t>(j) * stride;
@@ -65,8 +66,8 @@ ANNULET_CLONES void contract_source(const double* __restrict f, std::size_t stri
 }
 
 /// One pass over four source points at once keeps the accumulators in registers.
-ANNULET_CLONES void contract_source4(const double* __restrict f, std::size_t stride, const Buffers& g, int count, double* __restrict re,
-                                     double* __restrict im) {
+ANNULET_CLONES void contract_source4(const double* __restrict f, std::size_t stride, const Buffers& g, int count,
+                                     double* __restrict re, double* __restrict im) {
     const double *f0 = f, *f1 = f + stride, *f2 = f + 2 * stride, *f3 = f + 3 * stride;
     for (int e = 0; e < count; ++e) {
         re[e] = f0[e] * g.re[0][e] + f1[e] * g.re[1][e] + f2[e] * g.re[2][e] + f3[e] * g.re[3][e];
@@ -74,8 +75,8 @@ ANNULET_CLONES void contract_source4(const double* __restrict f, std::size_t str
     }
 }
 
-ANNULET_CLONES void add_scaled(double scale, const double* __restrict re, const double* __restrict im, int count, double* __restrict out_re,
-                               double* __restrict out_im) {
+ANNULET_CLONES void add_scaled(double scale, const double* __restrict re, const double* __restrict im, int count,
+                               double* __restrict out_re, double* __restrict out_im) {
     for (int e = 0; e < count; ++e) {
         out_re[e] += scale * re[e];
         out_im[e] += scale * im[e];
@@ -83,8 +84,9 @@ ANNULET_CLONES void add_scaled(double scale, const double* __restrict re, const 
 }
 
 /// out[a][b] += sum over axes of the test field at one point times the contracted source fields (two axes).
-ANNULET_CLONES void add_level(double fx, double fy, const double* __restrict xr, const double* __restrict xi, const double* __restrict yr,
-                              const double* __restrict yi, int count, double* __restrict out_re, double* __restrict out_im) {
+ANNULET_CLONES void add_level(double fx, double fy, const double* __restrict xr, const double* __restrict xi,
+                              const double* __restrict yr, const double* __restrict yi, int count,
+                              double* __restrict out_re, double* __restrict out_im) {
     for (int e = 0; e < count; ++e) {
         out_re[e] += fx * xr[e] + fy * yr[e];
         out_im[e] += fx * xi[e] + fy * yi[e];
@@ -106,9 +108,12 @@ void add_slot(const TestCell& test, int point, int b, const Contracted& h, bool 
     }
 }
 
-void contract(const double* __restrict f, std::size_t stride, int points, const Buffers& g, int count, double* __restrict re, double* __restrict im) {
-    if (points == 4) contract_source4(f, stride, g, count, re, im);
-    else contract_source(f, stride, points, g, count, re, im);
+void contract(const double* __restrict f, std::size_t stride, int points, const Buffers& g, int count,
+              double* __restrict re, double* __restrict im) {
+    if (points == 4)
+        contract_source4(f, stride, g, count, re, im);
+    else
+        contract_source(f, stride, points, g, count, re, im);
 }
 
 }  // namespace
@@ -151,8 +156,8 @@ void interact(const TestCell& test, const LocalTable& source, int first, int cou
         add_scaled(source.sign * test.charge[p], charge_re, charge_im, count, result.scalar_re, result.scalar_im);
         for (int b = 0; b < source.slots; ++b) {
             for (int axis = 0; axis < (level ? 2 : 3); ++axis)
-                contract(&source.field[source.index(b * source.points * 3 + axis, first)], 3 * stride, source.points,
-                         g, count, h.re[axis], h.im[axis]);
+                contract(&source.field[source.index(b * source.points * 3 + axis, first)], 3 * stride, source.points, g,
+                         count, h.re[axis], h.im[axis]);
             add_slot(test, i, b, h, level, count, result);
         }
     }

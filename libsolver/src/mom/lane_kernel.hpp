@@ -27,7 +27,7 @@ TestCell test_cell(const LocalTable& table, int lane);
 struct LaneResult {
     alignas(64) double vector_re[16][lane_chunk];  ///< [test slot * 4 + source slot], m
     alignas(64) double vector_im[16][lane_chunk];
-    alignas(64) double scalar_re[lane_chunk];      ///< 1/m
+    alignas(64) double scalar_re[lane_chunk];  ///< 1/m
     alignas(64) double scalar_im[lane_chunk];
 };
 

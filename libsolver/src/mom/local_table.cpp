@@ -11,7 +11,9 @@ namespace annulet {
 
 namespace {
 
-std::size_t at(int i) { return static_cast<std::size_t>(i); }
+std::size_t at(int i) {
+    return static_cast<std::size_t>(i);
+}
 
 struct SurfacePoint {
     Vec3 position;
@@ -23,9 +25,9 @@ std::vector<SurfacePoint> surface_points(const PlanarElement& e, bool fine) {
     if (e.slots == 3) {
         const TriangleRule rule = triangle_rule(fine ? 4 : 2);
         for (Eigen::Index i = 0; i < rule.weights.size(); ++i)
-            out.push_back({rule.points(i, 0) * e.corner[0] + rule.points(i, 1) * e.corner[1] +
-                               rule.points(i, 2) * e.corner[2],
-                           rule.weights[i] * e.area_m2});
+            out.push_back(
+                {rule.points(i, 0) * e.corner[0] + rule.points(i, 1) * e.corner[1] + rule.points(i, 2) * e.corner[2],
+                 rule.weights[i] * e.area_m2});
         return out;
     }
     const LineRule rule = gauss_legendre(fine ? 3 : 2, 0, 1);
@@ -74,9 +76,12 @@ void fill_segment(LocalTable& table, int lane, const Mesh& mesh, const Cell& cel
 
 int points_per_cell(CellKind kind, bool fine) {
     switch (kind) {
-        case CellKind::quadrilateral: return fine ? 9 : 4;
-        case CellKind::triangle: return fine ? 6 : 3;
-        case CellKind::segment: return fine ? 4 : 2;
+        case CellKind::quadrilateral:
+            return fine ? 9 : 4;
+        case CellKind::triangle:
+            return fine ? 6 : 3;
+        case CellKind::segment:
+            return fine ? 4 : 2;
     }
     return 0;
 }
@@ -126,8 +131,10 @@ std::vector<LocalTable> local_tables(const Mesh& mesh, bool fine) {
         allocate(t);
         for (int lane = 0; lane < t.lanes; ++lane) {
             const Cell& cell = mesh.cells[at(t.cell[at(lane)])];
-            if (kind == CellKind::segment) fill_segment(t, lane, mesh, cell);
-            else fill_surface(t, lane, planar_element(mesh, cell), fine);
+            if (kind == CellKind::segment)
+                fill_segment(t, lane, mesh, cell);
+            else
+                fill_surface(t, lane, planar_element(mesh, cell), fine);
         }
         set_level(t);
         tables.push_back(std::move(t));

@@ -11,15 +11,15 @@ namespace annulet {
 struct LocalTable {
     CellKind kind = CellKind::quadrilateral;
     int lanes = 0;
-    int points = 0;                 ///< per cell
+    int points = 0;  ///< per cell
     int slots = 0;
-    double sign = 1;                ///< -1 for images
-    std::vector<int> cell;          ///< mesh cell of each lane
-    std::vector<double> position;   ///< [point][3][lane], m
-    std::vector<double> field;      ///< [slot][point][3][lane]: weight times local function
-    std::vector<double> charge;     ///< [point][lane]: weight times charge density of a unit charge
-    std::vector<double> radius2;    ///< [lane]: square of the wire radius, m^2 (0 for surfaces)
-    bool level = true;              ///< no local function has a z component
+    double sign = 1;               ///< -1 for images
+    std::vector<int> cell;         ///< mesh cell of each lane
+    std::vector<double> position;  ///< [point][3][lane], m
+    std::vector<double> field;     ///< [slot][point][3][lane]: weight times local function
+    std::vector<double> charge;    ///< [point][lane]: weight times charge density of a unit charge
+    std::vector<double> radius2;   ///< [lane]: square of the wire radius, m^2 (0 for surfaces)
+    bool level = true;             ///< no local function has a z component
 
     std::size_t index(int outer, int lane) const {
         return static_cast<std::size_t>(outer) * static_cast<std::size_t>(lanes) + static_cast<std::size_t>(lane);

@@ -11,7 +11,9 @@ namespace annulet {
 namespace {
 
 using Complex = std::complex<double>;
-std::size_t at(int i) { return static_cast<std::size_t>(i); }
+std::size_t at(int i) {
+    return static_cast<std::size_t>(i);
+}
 
 /// Collects what one test cell contributes: one column of T per slot, one column of the scalar matrix.
 class RowAccumulator {

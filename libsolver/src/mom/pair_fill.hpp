@@ -26,7 +26,7 @@ struct SourceSet {
 
 /// Everything that does not depend on frequency.
 struct PairTables {
-    std::vector<SourceSet> sources;                ///< the cells; with a ground plane also their images
+    std::vector<SourceSet> sources;  ///< the cells; with a ground plane also their images
     std::vector<int> table_of_cell, lane_of_cell;
     /// Static part of near pairs tested on the row, 1/(4 pi R) included, not symmetrised:
     /// unknowns x unknowns (m) and cells x cells (1/m).

@@ -8,7 +8,9 @@ namespace annulet {
 
 namespace {
 
-std::size_t at(int i) { return static_cast<std::size_t>(i); }
+std::size_t at(int i) {
+    return static_cast<std::size_t>(i);
+}
 
 struct Extent {
     Vec3 centre{0, 0, 0};
@@ -47,8 +49,10 @@ std::vector<Neighbours> find_neighbours(const PairTables& tables, const std::vec
             if (before(tables, q, p)) continue;
             const double apart = (test[at(p)].centre - source[at(q)].centre).norm();
             const double size = std::max(test[at(p)].diameter, source[at(q)].diameter);
-            if (apart < 2 * size) out[at(p)].near.push_back(q);
-            else if (apart < 4 * size) out[at(p)].middle.push_back(q);
+            if (apart < 2 * size)
+                out[at(p)].near.push_back(q);
+            else if (apart < 4 * size)
+                out[at(p)].middle.push_back(q);
         }
     return out;
 }

@@ -10,8 +10,8 @@ namespace {
 
 /// Contribution of one directed edge whose polygon lies to the left of it seen against the normal.
 struct EdgeTerm {
-    double scalar = 0;   ///< to the integral of 1/R
-    Vec3 vector{0, 0, 0}; ///< to the integral of (rho' - rho)/R
+    double scalar = 0;     ///< to the integral of 1/R
+    Vec3 vector{0, 0, 0};  ///< to the integral of (rho' - rho)/R
 };
 
 /// ln((R+ + l+)/(R- + l-)), R^2 = l^2 + R0^2, in the form that cancels nowhere: R + l = R0^2 / (R - l).

@@ -8,8 +8,8 @@
 namespace annulet {
 
 struct CellPotential {
-    std::array<double, 4> scalar{};   ///< integral of 1/R over each triangle of the fan, m
-    Vec3 vector{0, 0, 0};             ///< integral of r'/R over the whole cell, m^2
+    std::array<double, 4> scalar{};  ///< integral of 1/R over each triangle of the fan, m
+    Vec3 vector{0, 0, 0};            ///< integral of r'/R over the whole cell, m^2
 };
 
 /// At the point r, anywhere in space.

@@ -10,6 +10,8 @@ using Vec3 = Eigen::Vector3d;
 using Vec2 = Eigen::Vector2d;
 
 /// A plane point lifted to height `z_m`.
-inline Vec3 lift(const Vec2& p, double z_m) { return {p.x(), p.y(), z_m}; }
+inline Vec3 lift(const Vec2& p, double z_m) {
+    return {p.x(), p.y(), z_m};
+}
 
 }  // namespace annulet

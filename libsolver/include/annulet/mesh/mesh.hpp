@@ -25,7 +25,8 @@ struct Cell {
 
 /// A port or part gap: its cells carry the impressed field `field_per_m` (unit vector along the current
 /// divided by the gap length: of a bridge from its first end to its second, of a slit from the right of its line,
-/// seen along it from its first point, to the left), so that V_m = V * sum_cells integral f_m . field_per_m  (design: physical gap).
+/// seen along it from its first point, to the left), so that V_m = V * sum_cells integral f_m . field_per_m  (design:
+/// physical gap).
 struct Gap {
     std::string name;
     struct Member {
@@ -40,8 +41,8 @@ struct Mesh {
     std::vector<Vec3> nodes;
     std::vector<Cell> cells;
     std::vector<Conductor> conductors;
-    std::vector<Gap> ports;    ///< in the order of Model::ports
-    std::vector<Gap> lumped;   ///< in the order of Model::lumped
+    std::vector<Gap> ports;   ///< in the order of Model::ports
+    std::vector<Gap> lumped;  ///< in the order of Model::lumped
     std::optional<double> ground_plane_m;
 };
 
@@ -49,10 +50,10 @@ struct Mesh {
 struct MeshOptions {
     double top_frequency_hz = 0;
     double cells_per_wavelength = 20;
-    int cells_across = 3;            ///< over the width of a strip, graded toward its edges
-    double edge_cell_fraction = 0.06; ///< width of the edge cell for 3 across; 0: cosine spacing; < 0: uniform
-    double refine = 1;               ///< divides every length; >1 is finer (both directions)
-    double memory_limit_bytes = 0;   ///< 0: no limit; else meshes whose matrix would not fit are refused
+    int cells_across = 3;              ///< over the width of a strip, graded toward its edges
+    double edge_cell_fraction = 0.06;  ///< width of the edge cell for 3 across; 0: cosine spacing; < 0: uniform
+    double refine = 1;                 ///< divides every length; >1 is finer (both directions)
+    double memory_limit_bytes = 0;     ///< 0: no limit; else meshes whose matrix would not fit are refused
 };
 
 /// Throws InputError (ports on no metal, shorted bridges, ...) or NumericalError (too large, with the estimate).

@@ -19,7 +19,7 @@ namespace annulet {
 struct Conductor {
     std::string name = "copper";
     double conductivity_s_per_m = std::numeric_limits<double>::infinity();
-    double thickness_m = 0;        ///< foil thickness; 0 for wires
+    double thickness_m = 0;  ///< foil thickness; 0 for wires
     double roughness_rms_m = 0;
     bool perfect() const { return conductivity_s_per_m == std::numeric_limits<double>::infinity(); }
 };
@@ -42,11 +42,11 @@ struct AroundMetal {
 
 struct Laminate {
     std::string name;
-    double top_m = 0;        ///< height of the upper face
+    double top_m = 0;  ///< height of the upper face
     double thickness_m = 0;
     std::vector<PermittivityPoint> permittivity;  ///< one entry: the causal model through it
     double loss_tangent = 0;
-    std::optional<double> permittivity_z;         ///< anisotropic: normal component; `permittivity` is in-plane
+    std::optional<double> permittivity_z;  ///< anisotropic: normal component; `permittivity` is in-plane
     std::variant<Shape, AroundMetal> outline;
     std::vector<Shape> openings;
     Position where;
@@ -56,7 +56,7 @@ struct Laminate {
 struct Metal {
     std::string name;
     double plane_m = 0;
-    bool cut = false;        ///< takes away the metal listed before it on its plane
+    bool cut = false;  ///< takes away the metal listed before it on its plane
     Shape shape;
     Conductor conductor;
     Position where;
@@ -183,7 +183,7 @@ struct Fabrication {
     std::optional<double> minimum_slot_m;
     std::optional<double> minimum_web_m;
     std::optional<double> tool_radius_m;
-    std::optional<double> etch_m;           ///< tolerances
+    std::optional<double> etch_m;  ///< tolerances
     std::optional<double> rout_m;
     std::optional<double> thickness_fraction;
     std::optional<double> permittivity_fraction;
@@ -194,17 +194,17 @@ enum class LaminateMethod { full, fixed_static };
 struct Accuracy {
     std::optional<double> resonance_fraction;
     LaminateMethod laminate = LaminateMethod::full;
-    int layers = 2;                 ///< cells through a sheet
+    int layers = 2;  ///< cells through a sheet
     std::optional<double> cells_per_wavelength;
     std::optional<int> cells_across;
 };
 
 struct Model {
     std::string title;
-    std::string file;                              ///< as named by the user, for messages
-    std::map<std::string, double> parameters_si;   ///< evaluated, SI
+    std::string file;                             ///< as named by the user, for messages
+    std::map<std::string, double> parameters_si;  ///< evaluated, SI
     std::vector<Laminate> laminates;
-    std::vector<Metal> metals;                     ///< in list order: cuts act on what stands before
+    std::vector<Metal> metals;  ///< in list order: cuts act on what stands before
     std::vector<Via> vias;
     std::vector<Wire> wires;
     std::vector<Port> ports;
