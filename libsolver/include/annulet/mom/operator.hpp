@@ -4,6 +4,7 @@
 
 #include <annulet/mesh/mesh.hpp>
 #include <annulet/mom/basis.hpp>
+#include <annulet/mom/permittivity.hpp>
 
 #include <Eigen/Core>
 #include <Eigen/SparseCore>
@@ -50,7 +51,7 @@ public:
     Eigen::MatrixXcd impedance_matrix(double frequency_hz, bool symmetrise = true) const;
 
     /// Static matrices (k = 0): <f_m, G f_n> (m), unknowns x unknowns, and potential coefficients times eps0 of
-    /// unit cell charges (1/m), cells x cells.
+    /// unit charges (1/m) on the elements that carry charge.
     Eigen::MatrixXd static_vector_potential() const;
     Eigen::MatrixXd static_scalar_potential() const;
 
@@ -68,6 +69,7 @@ private:
     std::vector<Lumped> parts_;
     Eigen::MatrixXd port_vectors_, lumped_vectors_;
     std::vector<Eigen::SparseMatrix<double>> gram_;  ///< per conductor: <f_m, f_n> on its cells
+    std::vector<Permittivity> permittivities_;       ///< per sheet
     std::unique_ptr<PairTables> tables_;
 };
 
