@@ -84,7 +84,7 @@ TEST(ReducedSweep, BoundsItsErrorOnARing) {
 TEST(ReducedSweep, SeveralPorts) {
     Mesh mesh = ring(0.054, 0.006, 28);
     append(mesh, ring(0.04, 0.004, 24), Vec3(0.11, 0.02, 0.005));
-    expect_bounded(Operator(mesh), 1e-6, 12, 15);
+    expect_bounded(Operator(mesh), 1e-6, 12, 9);
 }
 
 /// Pole of the current through the part from three exact solutions near it: i (f - p) = a + b f.

@@ -8,8 +8,10 @@
 
 #include <algorithm>
 #include <cmath>
+#include <optional>
 #include <utility>
 
+#include "mom/elements.hpp"
 #include "mom/pair_fill.hpp"
 #include "mom/phase_interpolant.hpp"
 
@@ -31,41 +33,46 @@ Complex wavenumber(Complex s) {
     return s / Complex(0, constants::c0_m_per_s);
 }
 
-Eigen::Matrix3Xd cell_centres(const Mesh& mesh) {
-    Eigen::Matrix3Xd centre(3, static_cast<Index>(mesh.cells.size()));
-    for (Index c = 0; c < centre.cols(); ++c) {
-        const Cell& cell = mesh.cells[static_cast<std::size_t>(c)];
-        Vec3 sum = Vec3::Zero();
-        for (int i = 0; i < cell.corners(); ++i)
-            sum += mesh.nodes[static_cast<std::size_t>(cell.node[static_cast<std::size_t>(i)])];
-        centre.col(c) = sum / cell.corners();
+Eigen::Matrix3Xd centres(const std::vector<Element>& elements) {
+    Eigen::Matrix3Xd centre = Eigen::Matrix3Xd::Zero(3, static_cast<Index>(elements.size()));
+    for (Index e = 0; e < centre.cols(); ++e) {
+        const Element& element = elements[static_cast<std::size_t>(e)];
+        for (int i = 0; i < element.corners(); ++i)
+            centre.col(e) += element.corner[static_cast<std::size_t>(i)] / element.corners();
     }
     return centre;
 }
 
-/// Mean of the centres of the cells that a function touches.
-Eigen::Matrix3Xd function_centres(const Basis& basis, const Eigen::Matrix3Xd& cell_centre) {
+/// Mean of the centres of the elements that a function touches.
+Eigen::Matrix3Xd function_centres(const Basis& basis, const std::vector<Element>& elements,
+                                  const Eigen::Matrix3Xd& element_centre) {
     Eigen::Matrix3Xd centre = Eigen::Matrix3Xd::Zero(3, basis.unknowns);
     VectorXd count = VectorXd::Zero(basis.unknowns);
-    for (Index c = 0; c < basis.divergence.outerSize(); ++c)
-        for (Eigen::SparseMatrix<double, Eigen::RowMajor>::InnerIterator i(basis.divergence, c); i; ++i) {
-            centre.col(i.col()) += cell_centre.col(c);
-            count[i.col()] += 1;
-        }
-    return centre * count.cwiseInverse().asDiagonal();
+    for (std::size_t e = 0; e < elements.size(); ++e)
+        for (int slot = 0; slot < elements[e].slots(); ++slot)
+            for (Basis::Matrix::InnerIterator i(basis.slots, basis.first_slot[e] + slot); i; ++i) {
+                centre.col(i.col()) += element_centre.col(static_cast<Index>(e));
+                count[i.col()] += 1;
+            }
+    return centre * count.cwiseMax(1).cwiseInverse().asDiagonal();
 }
 
-/// The longest distance of two nodes of the mesh, images included.
-double largest_distance_m(const Mesh& mesh) {
-    double largest = 0;
-    for (const Vec3& a : mesh.nodes)
-        for (const Vec3& b : mesh.nodes) {
-            Vec3 apart = a - b;
-            if (mesh.ground_plane_m)
-                apart.z() = std::max(std::abs(apart.z()), std::abs(a.z() + b.z() - 2 * *mesh.ground_plane_m));
-            largest = std::max(largest, apart.squaredNorm());
+/// The longest distance of two corners, images included; from the centres and the largest element.
+double largest_distance_m(const std::vector<Element>& elements, const Eigen::Matrix3Xd& centre,
+                          std::optional<double> ground_plane_m) {
+    double largest = 0, radius = 0;
+    for (Index e = 0; e < centre.cols(); ++e) {
+        for (const Vec3& corner : elements[static_cast<std::size_t>(e)].corner)
+            radius = std::max(radius, (corner - centre.col(e)).norm());
+        for (Index other = 0; other <= e; ++other) {
+            Vec3 apart = centre.col(e) - centre.col(other);
+            if (ground_plane_m)
+                apart.z() =
+                    std::max(std::abs(apart.z()), std::abs(centre(2, e) + centre(2, other) - 2 * *ground_plane_m));
+            largest = std::max(largest, apart.norm());
         }
-    return std::sqrt(largest);
+    }
+    return largest + 2 * radius;
 }
 
 /// Nodes in k^2 with which exp(-jx), 0 <= x <= `reach`, is known to `node_tolerance`: the Chebyshev coefficients are
@@ -134,11 +141,10 @@ Complex factor_derivative(const ExactTerm& term, Complex s) {
     return (4.0 * difference(h / 2) - difference(h)) / 3.0;
 }
 
-AffineOperator::AffineOperator(const Operator& op, double top_hz, const AffineOptions& options)
+AffineOperator::AffineOperator(const Operator& op, double top_hz, const AffineOptions& options, Progress* progress)
     : op_(&op), top_hz_(top_hz), exact_(op.exact_terms()) {
-    fill(options);
-    choose_nodes();
-    const int cells = static_cast<int>(op.mesh().cells.size());
+    fill(options, progress);
+    const int cells = static_cast<int>(op.basis().divergence.rows());
     const AffineMemory memory = affine_memory(op.unknowns(), cells, fills_, nodes(), 0);
     storage_ = options.storage;
     if (storage_ == AffineStorage::automatic)
@@ -157,12 +163,15 @@ AffineOperator::~AffineOperator() = default;
 AffineOperator::AffineOperator(AffineOperator&&) noexcept = default;
 AffineOperator& AffineOperator::operator=(AffineOperator&&) noexcept = default;
 
-void AffineOperator::fill(const AffineOptions& options) {
+void AffineOperator::fill(const AffineOptions& options, Progress* progress) {
     const double k_max = 2 * constants::pi * top_hz_ / constants::c0_m_per_s;
-    const auto centre = cell_centres(op_->mesh());
-    scalar_ = std::make_unique<PhaseInterpolant>(centre);
-    vector_ = std::make_unique<PhaseInterpolant>(function_centres(op_->basis(), centre));
+    const auto elements = make_elements(op_->mesh());
+    const Eigen::Matrix3Xd centre = centres(elements);
+    scalar_ = std::make_unique<PhaseInterpolant>(centre.leftCols(op_->basis().divergence.rows()));
+    vector_ = std::make_unique<PhaseInterpolant>(function_centres(op_->basis(), elements, centre));
+    choose_nodes(k_max * largest_distance_m(elements, centre, op_->mesh().ground_plane_m));
     for (const double x : leja_points(options.most_fills)) {
+        checkpoint(progress, "fill", static_cast<std::size_t>(fills_), 0);
         const double k = x * k_max;
         const Potentials exact = fill_potentials(op_->pair_tables(), op_->basis(), k, true);
         const bool enough = fills_ >= fewest_fills;
@@ -178,9 +187,8 @@ void AffineOperator::fill(const AffineOptions& options) {
                                      fills_, top_hz_ / 1e6, interpolation_error_, options.fill_tolerance));
 }
 
-void AffineOperator::choose_nodes() {
-    const double k_max = 2 * constants::pi * top_hz_ / constants::c0_m_per_s;
-    const int n = nodes_for(k_max * largest_distance_m(op_->mesh()));
+void AffineOperator::choose_nodes(double reach) {
+    const int n = nodes_for(reach);
     node_ = VectorXd::Zero(n + 1);
     for (int q = 1; q <= n; ++q) node_[q] = 0.5 - 0.5 * std::cos(constants::pi * (q - 0.5) / n);
 }

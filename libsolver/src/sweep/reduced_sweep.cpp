@@ -99,8 +99,7 @@ void ReducedSweep::run(Progress* progress) {
 }
 
 void ReducedSweep::note(const SweepPoint& solved) {
-    worst_.relative_residual = std::max(worst_.relative_residual, solved.quality.relative_residual);
-    worst_.reciprocal_condition = std::min(worst_.reciprocal_condition, solved.quality.reciprocal_condition);
+    worst_ = worse(worst_, solved.quality);
     fill_s_ += solved.fill_s;
     factor_s_ += solved.factor_s;
     solved_hz_.insert(std::upper_bound(solved_hz_.begin(), solved_hz_.end(), solved.frequency_hz), solved.frequency_hz);
@@ -130,7 +129,7 @@ void ReducedSweep::solve_at(double frequency_hz) {
     const MatrixXcd v = affine_->op().port_vectors().cast<Complex>();
     MatrixXcd currents = factor->solver.solve(v);
     currents += factor->solver.solve(v - factor->solver.multiply(currents));
-    point.quality = {factor->solver.relative_residual(currents, v), factor->solver.reciprocal_condition()};
+    point.quality = quality_of(factor->solver, currents, v);
     point.factor_s = seconds_since(start) - point.fill_s;
     factors_.push_back(std::move(factor));
     drop_factor();

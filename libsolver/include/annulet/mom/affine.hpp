@@ -2,6 +2,7 @@
 // models and natural modes need, since it can be evaluated, with its derivative, at any complex frequency.
 #pragma once
 
+#include <annulet/core/progress.hpp>
 #include <annulet/mom/operator.hpp>
 
 #include <Eigen/Core>
@@ -30,7 +31,8 @@ struct AffineOptions {
     double memory_limit_bytes = 1.0e9;  ///< of what is kept
 };
 
-/// Bytes that a mesh of `unknowns` and `cells` takes with `fills` exact fills and `nodes` affine nodes.
+/// Bytes that a mesh of `unknowns` and `cells` (elements that carry charge) takes with `fills` exact fills and `nodes`
+/// affine nodes.
 struct AffineMemory {
     double kept_terms_bytes = 0;         ///< 2 (nodes + 1) packed real matrices of the unknowns
     double kept_interpolants_bytes = 0;  ///< packed complex matrices of unknowns and of cells for each fill
@@ -48,8 +50,9 @@ AffineMemory affine_memory(int unknowns, int cells, int fills, int nodes, int fa
 /// interpolant make the even and odd parts. With the node k = 0 added the charge part of closed currents stays zero.
 class AffineOperator {
 public:
-    /// For frequencies up to `top_hz` (any lower one is inside). `op` must outlive this. Throws NumericalError.
-    AffineOperator(const Operator& op, double top_hz, const AffineOptions& options = {});
+    /// For frequencies up to `top_hz` (any lower one is inside). `op` must outlive this. Throws NumericalError,
+    /// Cancelled.
+    AffineOperator(const Operator& op, double top_hz, const AffineOptions& options = {}, Progress* progress = nullptr);
     ~AffineOperator();
     AffineOperator(AffineOperator&&) noexcept;
     AffineOperator& operator=(AffineOperator&&) noexcept;
@@ -78,8 +81,8 @@ public:
     const std::vector<ExactTerm>& exact_terms() const { return exact_; }
 
 private:
-    void fill(const AffineOptions& options);
-    void choose_nodes();
+    void fill(const AffineOptions& options, Progress* progress);
+    void choose_nodes(double reach);
     Eigen::VectorXcd packed_field(std::complex<double> k) const;
     Eigen::VectorXcd packed_field_derivative(std::complex<double> k) const;
     Eigen::MatrixXcd assemble(const Eigen::VectorXcd& packed) const;
