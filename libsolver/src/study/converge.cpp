@@ -15,6 +15,8 @@ namespace annulet {
 namespace {
 
 constexpr double step = 1.5;
+/// Larger meshes are compared with a coarser one, which takes a fraction of their time.
+constexpr int most_unknowns_to_refine = 450;
 constexpr double formal_order = 2, least_order = 0.5;
 constexpr double safety_assumed = 3, safety_observed = 1.25;
 /// Fills, affine nodes and factorisations of an ordinary sweep, for an estimate of memory.
@@ -48,8 +50,14 @@ public:
         : model_(model), options_(options), converge_(converge), progress_(progress) {}
 
     SolvedModel run() {
-        solve(1 / step);
         solve(1);
+        if (solved_.back().op.unknowns() <= most_unknowns_to_refine) {
+            solve(step);
+        } else {
+            solve(1 / step);
+            std::swap(solved_.front(), solved_.back());
+            refine_ = 1;
+        }
         judge();
         while (wanted() && !certain() && can_refine()) {
             solve(refine_ * step);
@@ -75,6 +83,7 @@ private:
         for (Resonance& r : fine.resonances) r.uncertainty_hz = uncertainty_hz(r);
         const SolvedModel& coarse = solved_[solved_.size() - 2];
         const double ratio = size_ratio(coarse, fine);
+        fine.reflection_uncertainty.clear();
         for (std::size_t p = 0; p < fine.curves.size(); ++p)
             fine.reflection_uncertainty.push_back(reflection_uncertainty(coarse.curves[p], fine.curves[p], ratio));
     }
@@ -119,8 +128,8 @@ private:
         const int charges = static_cast<int>(growth * static_cast<double>(now.op.basis().divergence.rows()));
         const double bytes = affine_memory(unknowns, charges, usual_fills, usual_nodes, usual_factors).peak_bytes;
         const double seconds = now.timing.total_s * growth * growth;
-        if (++meshes_ >= converge_.most_meshes)
-            why_ = fmt::format("{} meshes were tried", meshes_ + 1);
+        if (++meshes_ > converge_.most_meshes)
+            why_ = fmt::format("{} meshes were tried", meshes_ - 1);
         else if (options_.memory_limit_bytes > 0 && bytes > options_.memory_limit_bytes)
             why_ = fmt::format("the next mesh, of {} unknowns, needs {:.1f} GB", unknowns, bytes / 1e9);
         else if (seconds > converge_.time_limit_s)
@@ -144,7 +153,7 @@ private:
     Progress* progress_;
     std::vector<SolvedModel> solved_;
     double refine_ = 1;
-    int meshes_ = 1;
+    int meshes_ = 2;
     std::string why_;
 };
 
