@@ -7,6 +7,7 @@
 
 #include "mom/element.hpp"
 #include "mom/static_moments.hpp"
+#include "mom/wire_pairs.hpp"
 
 namespace annulet {
 
@@ -19,7 +20,10 @@ public:
 
 private:
     const Mesh& mesh_;
+    bool is_wire(int cell) const { return mesh_.cells[static_cast<std::size_t>(cell)].kind == CellKind::segment; }
+
     std::vector<PlanarElement> planar_, planar_image_;  ///< by cell; empty entries for segments
+    std::vector<WireElement> wire_, wire_image_;        ///< by cell; empty entries for flat cells
 };
 
 }  // namespace annulet

@@ -23,7 +23,8 @@ struct Basis {
     Eigen::SparseMatrix<double, Eigen::RowMajor> divergence;
 };
 
-/// Joins cells at shared edges and wire ends at shared nodes: n cells at one edge give n-1 functions.
+/// Joins cells at shared edges and wire ends at shared nodes: n cells at one edge give n-1 functions. Wire ends on the
+/// ground plane are connected to it: one function each, of a single slot.
 Basis make_basis(const Mesh& mesh);
 
 /// Value of local function `slot` (0 ... corners-1) of a cell at point r inside it: A/m per ampere for surfaces
