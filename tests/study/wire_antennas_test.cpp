@@ -15,8 +15,8 @@ TEST(WireAntennas, DipolesSurvey) {
         const double a = e.geometry("a_over_lambda"), l = e.geometry("L_over_lambda");
         const auto z = e.complex("Z_gap_2a");
         std::string line;
-        for (double cpw : {20., 30., 40.}) {
-            const auto s = solve_wires(dipole(l, a, 2 * a), frequency_hz, cpw);
+        for (double ref : {1., 2., 3., 4.}) {
+            const auto s = solve_wires(dipole(l, a, 2 * a), frequency_hz, 30, ref);
             const auto zc = s.impedance_ohm(0, 0);
             char buf[200];
             std::snprintf(buf, 200, " | %3d %6.2f%% R%6.2f%%", s.cells, 100 * std::abs(zc - z) / std::abs(z),

@@ -17,7 +17,7 @@ namespace {
 constexpr double infinity = std::numeric_limits<double>::infinity();
 constexpr double widest_turn_rad = constants::pi / 16;  // 32 cells around a full circle
 constexpr double fewest_cells_per_wire = 12;
-constexpr double fewest_cells_per_gap = 2;
+constexpr double fewest_cells_per_gap = 4;
 constexpr double open_end_share = 0.4;  // of a stretch: where cells shrink quadratically
 
 std::size_t at(int i) {
