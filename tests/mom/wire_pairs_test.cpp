@@ -99,6 +99,7 @@ TEST(WirePairs, WireBesideTriangleByQuadrature) {
     Cell plate;
     plate.kind = CellKind::triangle;
     plate.node = {0, 1, 2, -1};
+    mesh.cells = {plate};
     const PlanarElement surface = planar_element(mesh, plate);
     const WireElement wire{{0.2, 0.3, 0.25}, {1.4, 0.5, 0.9}, 0.1};
     const PairMoments m = static_wire_and_surface(wire, surface);

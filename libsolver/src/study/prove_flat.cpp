@@ -39,20 +39,41 @@ MeshOptions cosine_across(int cells, double refine) {
     return options;
 }
 
-/// Farad: all cells at one potential.
-double capacitance_f(const Model& model, double refine) {
-    const Eigen::MatrixXd p = Operator(make_mesh(model, cosine_across(4, refine))).static_scalar_potential();
-    return constants::eps0_f_per_m * p.ldlt().solve(Eigen::VectorXd::Ones(p.rows())).sum();
+/// Unit square, cells cosine-graded toward all edges.
+Mesh square_plate(int n) {
+    Mesh mesh;
+    const auto node = [n](int i) { return 0.5 - 0.5 * std::cos(pi * i / n); };
+    for (int i = 0; i <= n; ++i)
+        for (int j = 0; j <= n; ++j) mesh.nodes.emplace_back(node(i), node(j), 0);
+    for (int i = 0; i < n; ++i)
+        for (int j = 0; j < n; ++j) {
+            Cell cell;
+            const int corner = i * (n + 1) + j;
+            cell.node = {corner, corner + n + 1, corner + n + 2, corner + 1};
+            mesh.cells.push_back(cell);
+        }
+    return mesh;
+}
+
+/// Graded cells converge with the square of their size.
+double extrapolated(double coarse, double fine) {
+    return fine + (fine - coarse) / 3;
+}
+
+/// All cells at one potential; over 4 pi eps0, m.
+double capacitance(Mesh mesh) {
+    const Eigen::MatrixXd p = Operator(std::move(mesh)).static_scalar_potential();
+    return p.ldlt().solve(Eigen::VectorXd::Ones(p.rows())).sum() / (4 * pi);
 }
 
 std::vector<ProveCase> capacitance_cases(const references::Capacitance& c) {
     const bool square = c.inner < 0;
-    const Model model =
-        flat(square ? Shape(Rectangle{{0, 0}, {1, 1}, 0}) : Shape(Ring{{0, 0}, (1 + c.inner) / 2, 1 - c.inner}));
-    const double coarse = capacitance_f(model, 1), fine = capacitance_f(model, 2);
-    // Graded cells converge with the square of their size.
-    const double value = (fine + (fine - coarse) / 3) / (4 * pi * constants::eps0_f_per_m);
-    return {real_case(c.name, "capacitance_over_4pi_eps0", c.value, value, 0.002,
+    const auto mesh = [&](int refine) {
+        return square ? square_plate(6 * refine)
+                      : make_mesh(flat(Ring{{0, 0}, (1 + c.inner) / 2, 1 - c.inner}), cosine_across(4, refine));
+    };
+    return {real_case(c.name, "capacitance_over_4pi_eps0", c.value,
+                      extrapolated(capacitance(mesh(1)), capacitance(mesh(2))), 0.002,
                       square ? "Read, J. Comp. Appl. Math. 1997 (0.36679, from memory)"
                              : "ring integral equation: Smythe 1951, Cooke 1958")};
 }
@@ -68,10 +89,13 @@ Model fed_ring(double radius, double width, double gap) {
 
 std::vector<ProveCase> flat_ring_cases(const references::FlatRing& r) {
     const double f = 0.01 * constants::c0_m_per_s / (2 * pi);
-    const Operator op(make_mesh(fed_ring(1, r.width, 0.02), cosine_across(6, 1)));
-    const double reactance = (1.0 / solve_point(op, f, false).admittance_s(0, 0)).imag();
-    return {real_case(r.name, "inductance_over_mu0_m", r.over_mu0, reactance / (2 * pi * f * constants::mu0_h_per_m),
-                      0.01, "flux-line integral equation of the flat ring; thin limit ln(32 r/w) - 2")};
+    const auto inductance = [&](double refine) {
+        const Operator op(make_mesh(fed_ring(1, r.width, 0.02), cosine_across(3, refine)));
+        const double reactance = (1.0 / solve_point(op, f, false).admittance_s(0, 0)).imag();
+        return reactance / (2 * pi * f * constants::mu0_h_per_m);
+    };
+    return {real_case(r.name, "inductance_over_mu0_m", r.over_mu0, extrapolated(inductance(1), inductance(2)), 0.005,
+                      "flux-line integral equation of the flat ring; thin limit ln(32 r/w) - 2")};
 }
 
 struct StripRing {
@@ -82,15 +106,25 @@ struct StripRing {
 constexpr StripRing strip_rings[] = {{"strip ring, 2 mm wide", 0.002, 945.05e6, 143.75},
                                      {"strip ring, 8 mm wide", 0.008, 1000.78e6, 159.26}};
 
-std::vector<ProveCase> strip_ring_cases(const StripRing& ring) {
-    MeshOptions options = cosine_across(4, 1);
+struct Crossing {
+    double frequency_hz, resistance_ohm;
+};
+
+Crossing series_resonance(const StripRing& ring, double refine) {
+    MeshOptions options = cosine_across(3, refine);
     options.top_frequency_hz = 1.1e9;
-    options.cells_per_wavelength = 40;
     const Operator op(make_mesh(fed_ring(0.054, ring.width_m, 2 * pi * 0.054 / 60), options));
     const auto impedance = [&](double f) { return 1.0 / solve_point(op, f, false).admittance_s(0, 0); };
     const double f = bracketed_root([&](double x) { return impedance(x).imag(); }, 0.85e9, 1.1e9, 1e-6);
-    return {real_case(ring.name, "resonance_hz", ring.resonance_hz, f, 0.002, thin_loop),
-            real_case(ring.name, "resistance_ohm", ring.resistance_ohm, impedance(f).real(), 0.025, thin_loop)};
+    return {f, impedance(f).real()};
+}
+
+std::vector<ProveCase> strip_ring_cases(const StripRing& ring) {
+    const Crossing coarse = series_resonance(ring, 1), fine = series_resonance(ring, 2);
+    return {real_case(ring.name, "resonance_hz", ring.resonance_hz,
+                      extrapolated(coarse.frequency_hz, fine.frequency_hz), 0.002, thin_loop),
+            real_case(ring.name, "resistance_ohm", ring.resistance_ohm,
+                      extrapolated(coarse.resistance_ohm, fine.resistance_ohm), 0.025, thin_loop)};
 }
 
 }  // namespace
