@@ -66,6 +66,13 @@ TEST(MeshFaults, BridgeBackToItsOwnEdge) {
     EXPECT_EQ(fault_text(model), "3: port 'feed' has both ends of its bridge on the same edge of the metal\n");
 }
 
+TEST(MeshFaults, BridgeToAnOpenEnd) {
+    Model model = of({metal("line", box(0, 0, 100 * mm, 4 * mm))});
+    model.ports = {port("feed", bridge({45 * mm, 0}, {50 * mm, 0}, 1 * mm))};
+    EXPECT_EQ(fault_text(model),
+              "3: port 'feed' ends on an edge with no metal beyond, at (50, 0) mm: its bridge crosses no gap there\n");
+}
+
 TEST(MeshFaults, BridgeOverTwoGaps) {
     Model model = of({metal("line", box(0, 0, 100 * mm, 4 * mm)), cut("one", box(-5 * mm, 0, 1 * mm, 8 * mm)),
                       cut("two", box(5 * mm, 0, 1 * mm, 8 * mm))});

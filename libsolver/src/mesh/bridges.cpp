@@ -71,7 +71,9 @@ private:
         for (const Survey::Stretch& stretch : stretches) {
             if (stretch.piece >= 0) continue;
             if (&stretch == &stretches.front() || &stretch == &stretches.back()) {
-                fault("touches no metal: its bridge runs along an edge instead of across a gap");
+                const bool start = &stretch == &stretches.front();
+                fault(fmt::format("{} on an edge with no metal beyond, at {}: its bridge crosses no gap there",
+                                  start ? "starts" : "ends", mm(start ? a_ : b_)));
                 return nullptr;
             }
             if (gap != nullptr) {

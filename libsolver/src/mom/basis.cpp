@@ -8,6 +8,7 @@
 #include <utility>
 
 #include "mom/element.hpp"
+#include "mom/sheet_basis.hpp"
 
 namespace annulet {
 
@@ -56,24 +57,26 @@ Basis make_basis(const Mesh& mesh) {
             functions.emplace_back(cells[i], into_ground ? ground : cells[0]);
     }
     std::sort(functions.begin(), functions.end());
-    using Triplet = Eigen::Triplet<double>;
-    std::vector<Triplet> slots, divergence;
+    BasisTriplets triplets;
     for (const auto& [into, from] : functions) {
         const int n = basis.unknowns++;
         if (from == ground) {
-            slots.emplace_back(into.second, n, 1.0);
-            divergence.emplace_back(into.first, n, 1.0);
+            triplets.slots.emplace_back(into.second, n, 1.0);
+            triplets.divergence.emplace_back(into.first, n, 1.0);
             continue;
         }
-        slots.emplace_back(from.second, n, 1.0);
-        slots.emplace_back(into.second, n, -1.0);
-        divergence.emplace_back(from.first, n, 1.0);
-        divergence.emplace_back(into.first, n, -1.0);
+        triplets.slots.emplace_back(from.second, n, 1.0);
+        triplets.slots.emplace_back(into.second, n, -1.0);
+        triplets.divergence.emplace_back(from.first, n, 1.0);
+        triplets.divergence.emplace_back(into.first, n, -1.0);
     }
+    basis.metal_unknowns = basis.unknowns;
+    const int charges = append_sheets(mesh, rows, basis, triplets);
     basis.slots.resize(rows, basis.unknowns);
-    basis.slots.setFromTriplets(slots.begin(), slots.end());
-    basis.divergence.resize(static_cast<int>(mesh.cells.size()), basis.unknowns);
-    basis.divergence.setFromTriplets(divergence.begin(), divergence.end());
+    basis.slots.setFromTriplets(triplets.slots.begin(), triplets.slots.end());
+    basis.divergence.resize(charges, basis.unknowns);
+    basis.divergence.setFromTriplets(triplets.divergence.begin(), triplets.divergence.end());
+    basis.polarisation_mass = polarisation_mass(mesh, basis);
     return basis;
 }
 

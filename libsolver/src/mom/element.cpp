@@ -85,14 +85,21 @@ PlanarElement PlanarElement::mirrored(double plane_z_m) const {
     return image;
 }
 
-PlanarElement planar_element(const Mesh& mesh, const Cell& cell) {
+PlanarElement planar_element(const Element& element) {
     PlanarElement e;
-    e.slots = cell.corners();
-    for (int i = 0; i < 4; ++i) e.corner[at(i)] = mesh.nodes[at(cell.node[at(i < e.slots ? i : 0)])];
-    cell.kind == CellKind::quadrilateral ? fill_quadrilateral(e) : fill_triangle(e);
+    e.slots = element.corners();
+    e.corner = element.corner;
+    element.kind == CellKind::quadrilateral ? fill_quadrilateral(e) : fill_triangle(e);
     e.normal = (e.corner[1] - e.corner[0]).cross(e.corner[2] - e.corner[0]).normalized();
     e.slope_per_m2 = 1 / (2 * e.area_m2);
     return e;
+}
+
+PlanarElement planar_element(const Mesh& mesh, const Cell& cell) {
+    Element element;
+    element.kind = cell.kind;
+    for (int i = 0; i < 4; ++i) element.corner[at(i)] = mesh.nodes[at(cell.node[at(i < cell.corners() ? i : 0)])];
+    return planar_element(element);
 }
 
 MomentField moment_field(const PlanarElement& e) {

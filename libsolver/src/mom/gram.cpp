@@ -14,19 +14,6 @@ std::size_t at(int i) {
 
 using LocalGram = Eigen::Matrix4d;
 
-/// Mid-edge rule on each triangle of the fan: exact for products of affine functions [Strang1973].
-LocalGram planar_gram(const PlanarElement& e) {
-    LocalGram g = LocalGram::Zero();
-    for (int k = 0; k < e.slots; ++k) {
-        const double w = e.triangle_area(k) / 3;
-        for (const Vec3& r : {Vec3((e.edge_start(k) + e.edge_end(k)) / 2), Vec3((e.edge_end(k) + e.apex) / 2),
-                              Vec3((e.apex + e.edge_start(k)) / 2)})
-            for (int a = 0; a < e.slots; ++a)
-                for (int b = 0; b < e.slots; ++b) g(a, b) += w * e.value(k, a, r).dot(e.value(k, b, r));
-    }
-    return g;
-}
-
 /// Hat functions on a segment: L/3 and, with opposite tangents outward, -L/6.
 LocalGram segment_gram(double length) {
     LocalGram g = LocalGram::Zero();
@@ -54,6 +41,19 @@ std::array<Vec3, 4> local_integrals(const Mesh& mesh, const Cell& cell) {
 }
 
 }  // namespace
+
+/// Mid-edge rule on each triangle of the fan: exact for products of affine functions [Strang1973].
+Eigen::Matrix4d planar_gram(const PlanarElement& e) {
+    Eigen::Matrix4d g = Eigen::Matrix4d::Zero();
+    for (int k = 0; k < e.slots; ++k) {
+        const double w = e.triangle_area(k) / 3;
+        for (const Vec3& r : {Vec3((e.edge_start(k) + e.edge_end(k)) / 2), Vec3((e.edge_end(k) + e.apex) / 2),
+                              Vec3((e.apex + e.edge_start(k)) / 2)})
+            for (int a = 0; a < e.slots; ++a)
+                for (int b = 0; b < e.slots; ++b) g(a, b) += w * e.value(k, a, r).dot(e.value(k, b, r));
+    }
+    return g;
+}
 
 std::vector<Eigen::SparseMatrix<double>> gram_matrices(const Mesh& mesh, const Basis& basis) {
     using Triplet = Eigen::Triplet<double>;

@@ -5,7 +5,12 @@
 
 #include <vector>
 
+#include "mom/element.hpp"
+
 namespace annulet {
+
+/// <f_a, f_b> of the local functions over one planar element, dimensionless.
+Eigen::Matrix4d planar_gram(const PlanarElement& element);
 
 /// <f_m, f_n> over the cells of each conductor (dimensionless; wires per metre of circumference are handled by
 /// the impedance per length, so there it is in metres): one unknowns x unknowns matrix per Mesh::conductors entry.

@@ -36,6 +36,8 @@ Operator::Operator(Mesh mesh, std::vector<Lumped> parts)
     lumped_vectors_ = gap_vectors(mesh_, basis_, mesh_.lumped);
     gram_ = gram_matrices(mesh_, basis_);
     wire_radius_m_ = wire_radii(mesh_);
+    for (const SheetMesh& sheet : mesh_.sheets)
+        permittivities_.emplace_back(mesh_.laminates[static_cast<std::size_t>(sheet.laminate)]);
     tables_ = std::make_unique<PairTables>(make_pair_tables(mesh_, basis_));
 }
 
@@ -51,6 +53,8 @@ Eigen::MatrixXcd Operator::impedance_matrix(double frequency_hz, bool symmetrise
     z *= 1.0 / Complex(0, w * constants::eps0_f_per_m);
     z += Complex(0, w * constants::mu0_h_per_m) * g.vector;
     z += surface_impedance_matrix(frequency_hz);
+    for (std::size_t i = 0; i < mesh_.sheets.size(); ++i)
+        z += polarisation_factor(permittivities_[i], Complex(0, w)) * basis_.polarisation_mass[i].cast<Complex>();
     for (std::size_t i = 0; i < parts_.size(); ++i) {
         const Eigen::VectorXd v = lumped_vectors_.col(static_cast<int>(i));
         z += part_impedance(parts_[i], frequency_hz) * (v * v.transpose()).cast<Complex>();

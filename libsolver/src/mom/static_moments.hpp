@@ -10,7 +10,7 @@ namespace annulet {
 
 /// Local matrices of one ordered pair: inner integral over `source` in closed form, outer over `test`.
 struct PairMoments {
-    std::array<std::array<double, 4>, 4> vector{};  ///< [test slot][source slot], m
+    std::array<std::array<double, 5>, 5> vector{};  ///< [test slot][source slot], m
     double scalar = 0;                              ///< of unit charge on either cell, 1/m
 };
 

@@ -1,8 +1,7 @@
-// Static moments of any pair of cells: chooses the integrals by the kinds of the two.
+// Static moments of any pair of elements: chooses the integrals by the kinds of the two.
 #pragma once
 
-#include <annulet/mesh/mesh.hpp>
-
+#include <optional>
 #include <vector>
 
 #include "mom/element.hpp"
@@ -13,17 +12,18 @@ namespace annulet {
 
 class StaticPairs {
 public:
-    explicit StaticPairs(const Mesh& mesh);
-    /// Outer integral over cell `test`, inner over cell `source` or its mirror image in the ground plane. Safe to
+    /// `elements` must outlive this.
+    StaticPairs(const std::vector<Element>& elements, std::optional<double> ground_plane_m);
+    /// Outer integral over element `test`, inner over element `source` or its mirror image in the ground plane. Safe to
     /// call from several threads.
     PairMoments moments(int test, int source, bool image) const;
 
 private:
-    const Mesh& mesh_;
-    bool is_wire(int cell) const { return mesh_.cells[static_cast<std::size_t>(cell)].kind == CellKind::segment; }
+    PairMoments wire_moments(int test, int source, bool image) const;
 
-    std::vector<PlanarElement> planar_, planar_image_;  ///< by cell; empty entries for segments
-    std::vector<WireElement> wire_, wire_image_;        ///< by cell; empty entries for flat cells
+    const std::vector<Element>& elements_;
+    std::vector<PlanarElement> planar_, planar_image_;  ///< by element; empty entries for segments
+    std::vector<WireElement> wire_, wire_image_;        ///< by element; empty entries for flat ones
 };
 
 }  // namespace annulet

@@ -175,7 +175,11 @@ void add_ring(const WireElement& wire, const PlanarElement& surface, double u, d
         const double psi = 2 * pi * (i + 0.5) / ring_points;
         const Vec3 r = wire.point(u) + wire.radius_m * (std::cos(psi) * side + std::sin(psi) * other);
         const CellPotential v = static_potential(surface, r);
-        for (std::size_t k = 0; k < 4; ++k) pair.scalar += w * v.scalar[k];
+        const double potential = v.scalar[0] + v.scalar[1] + v.scalar[2] + v.scalar[3];
+        const double upward = w * tangent.z() * potential / surface.area_m2;
+        pair.scalar += w * potential;
+        pair.vector[0][static_cast<std::size_t>(surface.slots)] -= (1 - u) * upward;
+        pair.vector[1][static_cast<std::size_t>(surface.slots)] += u * upward;
         for (std::size_t b = 0; b < static_cast<std::size_t>(surface.slots); ++b) {
             Vec3 field = surface.slope_per_m2 * v.vector;
             for (std::size_t k = 0; k < 4 && (surface.slots == 4 || k == 0); ++k)
@@ -209,9 +213,8 @@ WireElement WireElement::mirrored(double plane_z_m) const {
     return image;
 }
 
-WireElement wire_element(const Mesh& mesh, const Cell& cell) {
-    return {mesh.nodes[static_cast<std::size_t>(cell.node[0])], mesh.nodes[static_cast<std::size_t>(cell.node[1])],
-            cell.radius_m};
+WireElement wire_element(const Element& segment) {
+    return {segment.corner[0], segment.corner[1], segment.radius_m};
 }
 
 double tube_kernel(double squared_distance_m2, double a_m, double b_m) {
@@ -237,8 +240,8 @@ PairMoments static_wire_and_surface(const WireElement& wire, const PlanarElement
 PairMoments transposed(const PairMoments& pair) {
     PairMoments out;
     out.scalar = pair.scalar;
-    for (std::size_t a = 0; a < 4; ++a)
-        for (std::size_t b = 0; b < 4; ++b) out.vector[a][b] = pair.vector[b][a];
+    for (std::size_t a = 0; a < pair.vector.size(); ++a)
+        for (std::size_t b = 0; b < pair.vector.size(); ++b) out.vector[a][b] = pair.vector[b][a];
     return out;
 }
 

@@ -1,9 +1,8 @@
 // Static Galerkin integrals of thin tubes: wire segment with wire segment, wire segment with flat cell.
 #pragma once
 
-#include <annulet/mesh/mesh.hpp>
-
 #include "mom/element.hpp"
+#include "mom/elements.hpp"
 #include "mom/static_moments.hpp"
 
 namespace annulet {
@@ -20,7 +19,7 @@ struct WireElement {
     WireElement mirrored(double plane_z_m) const;
 };
 
-WireElement wire_element(const Mesh& mesh, const Cell& cell);
+WireElement wire_element(const Element& segment);
 
 /// Mean of 1/sqrt(d^2 + a^2 + b^2 - 2 a b cos(phi)) over phi, 1/m: exact for the currents of one tube (a = b) or of
 /// coaxial ones of radii a and b, whose points lie d apart along the axis ([King1956] ch. I); for others it is off by
@@ -32,7 +31,7 @@ double tube_kernel(double squared_distance_m2, double a_m, double b_m);
 PairMoments static_wire_pair(const WireElement& test, const WireElement& source);
 
 /// Mean over the circumference of the wire of the potential of the flat cell. The first index of the moments is
-/// the wire's.
+/// the wire's. After the slots of the flat cell: a unit charge on it that moves along z with unit speed.
 PairMoments static_wire_and_surface(const WireElement& wire, const PlanarElement& surface);
 
 PairMoments transposed(const PairMoments& pair);

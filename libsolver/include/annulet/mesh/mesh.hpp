@@ -37,6 +37,23 @@ struct Gap {
     double length_m = 0;
 };
 
+/// A dielectric sheet cut into columns, each column into layers: bricks and prisms. Where metal lies on a face, the
+/// columns under it are its own cells, so that the two share their panels.
+struct SheetMesh {
+    /// Plan of one column: corners counter-clockwise seen from +z, indices into `plan`.
+    struct Column {
+        CellKind kind = CellKind::quadrilateral;  ///< or triangle
+        std::array<int, 4> node{-1, -1, -1, -1};
+    };
+    int laminate = -1;                 ///< index into Mesh::laminates
+    std::vector<double> level_m;       ///< heights of the layer interfaces from the bottom face up, layers + 1
+    std::vector<Vec2> plan;
+    std::vector<Column> columns;
+    std::vector<int> metal_on_top;     ///< by column: the cell that covers the face exactly, or -1; empty: none
+    std::vector<int> metal_on_bottom;
+    int layers() const { return static_cast<int>(level_m.size()) - 1; }
+};
+
 struct Mesh {
     std::vector<Vec3> nodes;
     std::vector<Cell> cells;
@@ -44,6 +61,8 @@ struct Mesh {
     std::vector<Gap> ports;   ///< in the order of Model::ports
     std::vector<Gap> lumped;  ///< in the order of Model::lumped
     std::optional<double> ground_plane_m;
+    std::vector<Laminate> laminates;  ///< as in the model
+    std::vector<SheetMesh> sheets;    ///< those that enter the solution
 };
 
 /// How fine to mesh. Lengths along the current follow the wavelength at `top_frequency_hz`.

@@ -4,6 +4,7 @@
 
 #include <annulet/mesh/mesh.hpp>
 #include <annulet/mom/basis.hpp>
+#include <annulet/mom/permittivity.hpp>
 
 #include <Eigen/Core>
 
@@ -41,7 +42,7 @@ public:
     Eigen::MatrixXcd impedance_matrix(double frequency_hz, bool symmetrise = true) const;
 
     /// Static matrices (k = 0): <f_m, G f_n> (m), unknowns x unknowns, and potential coefficients times eps0 of
-    /// unit cell charges (1/m), cells x cells.
+    /// unit charges (1/m) on the elements that carry charge.
     Eigen::MatrixXd static_vector_potential() const;
     Eigen::MatrixXd static_scalar_potential() const;
 
@@ -58,6 +59,7 @@ private:
     Eigen::MatrixXd port_vectors_, lumped_vectors_;
     std::vector<Eigen::SparseMatrix<double>> gram_;  ///< per conductor: <f_m, f_n> on its cells
     std::vector<double> wire_radius_m_;              ///< per conductor: of the round wire; 0: foil
+    std::vector<Permittivity> permittivities_;       ///< per sheet
     std::unique_ptr<PairTables> tables_;
 };
 
