@@ -34,8 +34,7 @@ std::vector<Extent> extents(const std::vector<Element>& elements) {
 
 /// Table order: by role and kind, then by number.
 bool before(const PairTables& t, int p, int q) {
-    return std::pair(t.table_of[at(p)], t.lane_of[at(p)]) <
-           std::pair(t.table_of[at(q)], t.lane_of[at(q)]);
+    return std::pair(t.table_of[at(p)], t.lane_of[at(p)]) < std::pair(t.table_of[at(q)], t.lane_of[at(q)]);
 }
 
 std::vector<Neighbours> find_neighbours(const PairTables& tables, const std::vector<Extent>& test,
