@@ -22,9 +22,10 @@ struct Command {
 };
 
 Command sweep_command();
+Command prove_command();
 
 inline std::vector<Command> all_commands() {
-    return {sweep_command()};
+    return {sweep_command(), prove_command()};
 }
 
 }  // namespace annulet::app

@@ -122,6 +122,23 @@ class Command(unittest.TestCase):
                             self.assertAlmostEqual(first[quantity], value[quantity],
                                                    delta=value[quantity] * value[tolerance])
 
+    def test_prove_passes_and_names_its_sources(self):
+        result = self.run_program("prove", "--json", "-")
+        self.assertEqual(result.returncode, 0, result.stderr)
+        found = json.loads(result.stdout)
+        self.assertEqual((found["command"], found["pass"], found["failed"]), ("prove", True, 0))
+        self.assertGreater(found["judged"], 100)
+        for case in found["cases"]:
+            self.assertTrue({"name", "quantity", "reference", "computed", "tolerance", "source", "pass"} <= set(case))
+            self.assertTrue(case["source"])
+            # What is no outside result is shown and not judged.
+            if "not published" in case["source"]:
+                self.assertIsNone(case["pass"])
+
+    def test_prove_takes_no_model(self):
+        result = self.run_program("prove", MODELS / "monopole-433.toml")
+        self.assertEqual((result.returncode, result.stdout), (2, ""))
+
     def test_quiet_says_nothing_and_writes_all(self):
         result = self.sweep("--quiet")
         self.assertEqual((result.returncode, result.stdout, result.stderr), (0, "", ""))

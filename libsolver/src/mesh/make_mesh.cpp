@@ -5,6 +5,8 @@
 #include <stdexcept>
 
 #include "mesh/assemble.hpp"
+#include "mesh/wire_contacts.hpp"
+#include "mesh/wire_plan.hpp"
 
 namespace annulet {
 
@@ -25,10 +27,12 @@ Mesh make_mesh(const Model& model, const MeshOptions& options) {
     check_options(options);
     MeshFaults faults;
     Layout layout = lay_out(model, faults);
+    const WirePlan wires = plan_wires(model, options, faults);
+    if (faults.empty()) check_wire_contacts(model, wires, layout.pieces, faults);
     faults.throw_if_any();
     std::vector<CrossGrid> across = cross_grids(layout, options);
     const AlongGrid along = along_grid(layout, options);
-    const double unknowns = count_unknowns(layout, across, along, options.refine);
+    const double unknowns = count_unknowns(layout, across, along, options.refine) + wires.cells(options.refine);
     const double bytes = matrix_bytes(unknowns);
     if (unknowns > most_unknowns || (options.memory_limit_bytes > 0 && bytes > options.memory_limit_bytes)) {
         const std::string limit = options.memory_limit_bytes > 0 && bytes > options.memory_limit_bytes
@@ -40,7 +44,9 @@ Mesh make_mesh(const Model& model, const MeshOptions& options) {
                         unknowns, bytes / 1e9, limit));
     }
     refine_grids(across, options);
-    return assemble(model, layout, across, along, options.refine);
+    Mesh mesh = assemble(model, layout, across, along, options.refine);
+    add_wires(model, wires, options.refine, mesh);
+    return mesh;
 }
 
 }  // namespace annulet

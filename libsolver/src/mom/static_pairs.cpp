@@ -20,8 +20,10 @@ StaticPairs::StaticPairs(const std::vector<Element>& elements, std::optional<dou
     for (const Element& element : elements) {
         const bool planar = element.kind != CellKind::segment;
         planar_.push_back(planar ? planar_element(element) : PlanarElement{});
-        if (ground_plane_m)
-            planar_image_.push_back(planar ? planar_.back().mirrored(*ground_plane_m) : PlanarElement{});
+        wire_.push_back(planar ? WireElement{} : wire_element(element));
+        if (!ground_plane_m) continue;
+        planar_image_.push_back(planar ? planar_.back().mirrored(*ground_plane_m) : PlanarElement{});
+        wire_image_.push_back(wire_.back().mirrored(*ground_plane_m));
     }
 }
 
@@ -29,9 +31,18 @@ PairMoments StaticPairs::moments(int test, int source, bool image) const {
     const auto i = static_cast<std::size_t>(test), j = static_cast<std::size_t>(source);
     const PlanarElement& t = planar_[i];
     const PlanarElement& s = (image ? planar_image_ : planar_)[j];
+    const WireElement& source_wire = (image ? wire_image_ : wire_)[j];
+    if (is_wire(i) && is_wire(j)) return static_wire_pair(wire_[i], source_wire);
+    const bool panel = elements_[i].role == ElementRole::panel || elements_[j].role == ElementRole::panel;
+    if (is_wire(i) || is_wire(j)) {
+        PairMoments m = is_wire(i) ? static_wire_and_surface(wire_[i], s)
+                                   : transposed(static_wire_and_surface(source_wire, t));
+        if (panel) m.vector = {};
+        return m;
+    }
     const bool close = distance(t, s) < 0.5 * t.diameter();
     PairMoments m;
-    if (elements_[i].role == ElementRole::panel || elements_[j].role == ElementRole::panel) {
+    if (panel) {
         m.scalar = static_scalar(t, s, close);
         return m;
     }

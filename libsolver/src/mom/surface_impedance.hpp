@@ -12,6 +12,10 @@ namespace annulet {
 /// K = 1 + (2/pi) atan(1.4 (rms/delta)^2) [Hammerstad1980]. Thickness 0: infinitely thick. Zero if perfect.
 std::complex<double> sheet_impedance(const Conductor& conductor, double frequency_hz);
 
+/// Internal impedance per length (ohm/m) of a round wire: gamma / (2 pi a sigma) I0(gamma a) / I1(gamma a),
+/// gamma = (1 + j)/delta ([Ramo1994] ch. 4), times the roughness factor. Zero if perfect.
+std::complex<double> wire_impedance_per_m(const Conductor& conductor, double radius_m, double frequency_hz);
+
 /// Skin depth, m; conductivity finite.
 double skin_depth_m(double conductivity_s_per_m, double frequency_hz);
 
