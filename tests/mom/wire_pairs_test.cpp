@@ -1,5 +1,7 @@
 #include "mom/wire_pairs.hpp"
 
+#include "mom/static_pairs.hpp"
+
 #include <gtest/gtest.h>
 #include <annulet/core/constants.hpp>
 #include <annulet/mom/basis.hpp>
@@ -122,6 +124,28 @@ TEST(WirePairs, WireBesideTriangleByQuadrature) {
     EXPECT_NEAR(m.scalar / scalar, 1, 1e-6);
     EXPECT_NEAR(m.vector[1][1] / vector, 1, 1e-6);
     EXPECT_EQ(transposed(m).vector[1][0], m.vector[0][1]);
+}
+
+// The vertical flux of a layer couples with what of the wire is upright; far away as two points do, and from the image
+// with the opposite sign.
+TEST(WirePairs, UprightWireAndVerticalFluxOfALayer) {
+    std::vector<Element> elements(2);
+    elements[0].kind = CellKind::segment;
+    elements[0].corner = {Vec3(0, 0, 20), Vec3(0, 0, 21), Vec3::Zero(), Vec3::Zero()};
+    elements[0].radius_m = 0.01;
+    elements[1].role = ElementRole::layer;
+    elements[1].corner = {Vec3(20, 0, 5), Vec3(20.1, 0, 5), Vec3(20.1, 0.1, 5), Vec3(20, 0.1, 5)};
+    elements[1].thickness_m = 0.3;
+    const StaticPairs pairs(elements, 0.0);
+    const PairMoments m = pairs.moments(0, 1, false), back = pairs.moments(1, 0, false);
+    const double point = 0.3 * 0.5 / (4 * pi * std::hypot(20.05, 15.5));
+    EXPECT_NEAR(m.vector[1][4] / point, 1, 0.02);
+    EXPECT_NEAR(m.vector[0][4] / -point, 1, 0.02);
+    EXPECT_NEAR(back.vector[4][1] / m.vector[1][4], 1, 1e-12);
+    // The image of the layer lies at z = -5 and its flux points down; the image of the wire likewise.
+    const PairMoments image = pairs.moments(0, 1, true), other = pairs.moments(1, 0, true);
+    EXPECT_NEAR(image.vector[1][4] / (-0.3 * 0.5 / (4 * pi * std::hypot(20.05, 25.5))), 1, 0.02);
+    EXPECT_NEAR(other.vector[4][1] / image.vector[1][4], 1, 1e-6);
 }
 
 }  // namespace

@@ -35,9 +35,9 @@ Operator::Operator(Mesh mesh, std::vector<Lumped> parts)
     port_vectors_ = gap_vectors(mesh_, basis_, mesh_.ports);
     lumped_vectors_ = gap_vectors(mesh_, basis_, mesh_.lumped);
     gram_ = gram_matrices(mesh_, basis_);
-    wire_radius_m_ = wire_radii(mesh_);
     for (const SheetMesh& sheet : mesh_.sheets)
         permittivities_.emplace_back(mesh_.laminates[static_cast<std::size_t>(sheet.laminate)]);
+    wire_radius_m_ = wire_radii(mesh_);
     tables_ = std::make_unique<PairTables>(make_pair_tables(mesh_, basis_));
 }
 

@@ -6,16 +6,14 @@ namespace annulet {
 
 namespace {
 
-/// Local functions that the roles lack, and the vertical flux that a layer has on top: along z, the thickness times a
-/// unit charge density; mirrored it points down.
-void fit_roles(const Element& test, const Element& source, bool image, PairMoments& m) {
-    const auto n_test = static_cast<std::size_t>(test.corners()), n_source = static_cast<std::size_t>(source.corners());
-    if (test.role == ElementRole::panel || source.role == ElementRole::panel) m.vector = {};
-    if (test.role == ElementRole::layer && source.role == ElementRole::layer)
-        m.vector[n_test][n_source] = (image ? -1 : 1) * test.thickness_m * source.thickness_m * m.scalar;
+/// The vertical flux that a layer has on top of its edges: along z, the thickness times a unit charge density;
+/// mirrored it points down.
+void add_vertical_flux(const Element& test, const Element& source, bool image, PairMoments& m) {
+    const auto a = static_cast<std::size_t>(test.corners()), b = static_cast<std::size_t>(source.corners());
+    m.vector[a][b] = (image ? -1 : 1) * test.thickness_m * source.thickness_m * m.scalar;
 }
 
-/// The same for a flat element with a wire, whose moments with a unit charge density along z come along.
+/// What the role of a flat element leaves of its moments with a wire, those of a unit charge moving along z among them.
 void fit_role(const Element& flat, double upward, PairMoments& m) {
     const auto n = static_cast<std::size_t>(flat.corners());
     if (flat.role == ElementRole::panel) m.vector = {};
@@ -36,28 +34,34 @@ StaticPairs::StaticPairs(const std::vector<Element>& elements, std::optional<dou
     }
 }
 
-PairMoments StaticPairs::wire_moments(int test, int source, bool image) const {
-    const auto i = static_cast<std::size_t>(test), j = static_cast<std::size_t>(source);
-    const WireElement& source_wire = (image ? wire_image_ : wire_)[j];
-    if (elements_[i].kind != CellKind::segment) {
-        PairMoments m = static_wire_and_surface(source_wire, planar_[i]);
-        fit_role(elements_[i], 1, m);
+PairMoments StaticPairs::wire_moments(std::size_t test, std::size_t source, bool image) const {
+    const WireElement& source_wire = (image ? wire_image_ : wire_)[source];
+    if (is_wire(test) && is_wire(source)) return static_wire_pair(wire_[test], source_wire);
+    if (is_wire(source)) {
+        PairMoments m = static_wire_and_surface(source_wire, planar_[test]);
+        fit_role(elements_[test], 1, m);
         return transposed(m);
     }
-    if (elements_[j].kind == CellKind::segment) return static_wire_pair(wire_[i], source_wire);
-    PairMoments m = static_wire_and_surface(wire_[i], (image ? planar_image_ : planar_)[j]);
-    fit_role(elements_[j], image ? -1 : 1, m);
+    PairMoments m = static_wire_and_surface(wire_[test], (image ? planar_image_ : planar_)[source]);
+    fit_role(elements_[source], image ? -1 : 1, m);
     return m;
 }
 
 PairMoments StaticPairs::moments(int test, int source, bool image) const {
     const auto i = static_cast<std::size_t>(test), j = static_cast<std::size_t>(source);
-    if (elements_[i].kind == CellKind::segment || elements_[j].kind == CellKind::segment)
-        return wire_moments(test, source, image);
+    if (is_wire(i) || is_wire(j)) return wire_moments(i, j, image);
     const PlanarElement& t = planar_[i];
     const PlanarElement& s = (image ? planar_image_ : planar_)[j];
-    PairMoments m = static_pair(t, s, distance(t, s) < 0.5 * t.diameter());
-    fit_roles(elements_[i], elements_[j], image, m);
+    const bool panel = elements_[i].role == ElementRole::panel || elements_[j].role == ElementRole::panel;
+    const bool close = distance(t, s) < 0.5 * t.diameter();
+    PairMoments m;
+    if (panel) {
+        m.scalar = static_scalar(t, s, close);
+        return m;
+    }
+    m = static_pair(t, s, close);
+    if (elements_[i].role == ElementRole::layer && elements_[j].role == ElementRole::layer)
+        add_vertical_flux(elements_[i], elements_[j], image, m);
     return m;
 }
 

@@ -19,7 +19,8 @@ public:
     PairMoments moments(int test, int source, bool image) const;
 
 private:
-    PairMoments wire_moments(int test, int source, bool image) const;
+    bool is_wire(std::size_t e) const { return elements_[e].kind == CellKind::segment; }
+    PairMoments wire_moments(std::size_t test, std::size_t source, bool image) const;
 
     const std::vector<Element>& elements_;
     std::vector<PlanarElement> planar_, planar_image_;  ///< by element; empty entries for segments

@@ -58,8 +58,8 @@ private:
     std::vector<Lumped> parts_;
     Eigen::MatrixXd port_vectors_, lumped_vectors_;
     std::vector<Eigen::SparseMatrix<double>> gram_;  ///< per conductor: <f_m, f_n> on its cells
-    std::vector<double> wire_radius_m_;              ///< per conductor: of the round wire; 0: foil
     std::vector<Permittivity> permittivities_;       ///< per sheet
+    std::vector<double> wire_radius_m_;              ///< per conductor: of the round wire; 0: foil
     std::unique_ptr<PairTables> tables_;
 };
 
