@@ -4,6 +4,7 @@
 #include <cmath>
 
 #include "mesh/bridges.hpp"
+#include "mesh/sheet_outline.hpp"
 
 namespace annulet {
 
@@ -87,6 +88,7 @@ Layout lay_out(const Model& model, MeshFaults& faults) {
                                                 std::get<OnWire>(place.placement).wire));
         }
     }
+    place_sheet_edges(model, layout, faults);
     for (Piece& piece : layout.pieces) finish_fronts(piece, model, faults);
     layout.joins = find_joins(model, layout.pieces);
     check_contacts(model, layout, faults);

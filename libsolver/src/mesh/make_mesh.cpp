@@ -5,6 +5,7 @@
 #include <stdexcept>
 
 #include "mesh/assemble.hpp"
+#include "mesh/sheets.hpp"
 
 namespace annulet {
 
@@ -40,7 +41,10 @@ Mesh make_mesh(const Model& model, const MeshOptions& options) {
                         unknowns, bytes / 1e9, limit));
     }
     refine_grids(across, options);
-    return assemble(model, layout, across, along, options.refine);
+    Mesh mesh = assemble(model, layout, across, along, options.refine);
+    add_sheets(mesh, {model, layout, across, along, options}, faults);
+    faults.throw_if_any();
+    return mesh;
 }
 
 }  // namespace annulet
