@@ -6,7 +6,7 @@
 #include <annulet/io/sweep_result.hpp>
 #include <annulet/io/text_file.hpp>
 #include <annulet/io/touchstone.hpp>
-#include <annulet/study/solve.hpp>
+#include <annulet/study/converge.hpp>
 
 #include <fmt/format.h>
 
@@ -34,7 +34,7 @@ void add_options(CLI::App& parser, SweepOptionsGiven& given) {
         ->allow_extra_args(false)
         ->excludes("--from", "--to", "--points");
     parser.add_flag("--every-point", given.every_point,
-                    "Fill and factorise exactly at every point (at present every sweep does)");
+                    "Fill and factorise exactly at every point: slow, to check the sweep against");
 }
 
 FrequencyChoice frequencies(const SweepOptionsGiven& given) {
@@ -83,13 +83,15 @@ int run(const SweepOptionsGiven& given) {
     solve.frequencies = frequencies(given);
     solve.memory_limit_bytes = memory_at_hand_bytes();
     solve.threads = options.threads;
+    solve.every_point = given.every_point;
 
     auto loaded = load_model(options, "sweep");
     auto files = planned_files(options, loaded);
     check_writable(files, options.force);
 
     auto progress = begin_work(options);
-    const auto solved = solve_model(std::move(loaded.model), solve, progress.get());
+    const auto solved = given.every_point ? solve_model(std::move(loaded.model), solve, progress.get())
+                                          : solve_with_error_bars(loaded.model, solve, {}, progress.get());
     const auto json = fill(files, options, solved, loaded.origin);
     checkpoint(progress.get(), "write", 0, 0);
     progress.reset();

@@ -4,6 +4,7 @@
 #include <cmath>
 
 #include "mesh/bridges.hpp"
+#include "mesh/sheet_outline.hpp"
 
 namespace annulet {
 
@@ -82,6 +83,7 @@ Layout lay_out(const Model& model, MeshFaults& faults) {
             place_slit(model, layout, static_cast<int>(k), place, *across, faults);
         }
     }
+    place_sheet_edges(model, layout, faults);
     for (Piece& piece : layout.pieces) finish_fronts(piece, model, faults);
     layout.joins = find_joins(model, layout.pieces);
     check_contacts(model, layout, faults);

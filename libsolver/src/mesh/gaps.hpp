@@ -54,6 +54,7 @@ struct Layout {
     std::vector<Span> spans;
     std::vector<SlitGap> slits;
     std::vector<Join> joins;
+    std::vector<Join> aligned;  ///< ends that face each other over bare sheet: their node lines correspond
 };
 
 /// Everything on the metal, faults collected.

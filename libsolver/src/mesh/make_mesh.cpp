@@ -5,6 +5,7 @@
 #include <stdexcept>
 
 #include "mesh/assemble.hpp"
+#include "mesh/sheets.hpp"
 #include "mesh/wire_contacts.hpp"
 #include "mesh/wire_plan.hpp"
 
@@ -46,6 +47,8 @@ Mesh make_mesh(const Model& model, const MeshOptions& options) {
     refine_grids(across, options);
     Mesh mesh = assemble(model, layout, across, along, options.refine);
     add_wires(model, wires, options.refine, mesh);
+    add_sheets(mesh, {model, layout, across, along, options}, faults);
+    faults.throw_if_any();
     return mesh;
 }
 

@@ -83,4 +83,21 @@ Eigen::SparseMatrix<Complex> Operator::surface_impedance_matrix(double frequency
     return sum;
 }
 
+std::vector<ExactTerm> Operator::exact_terms() const {
+    std::vector<ExactTerm> terms;
+    for (std::size_t i = 0; i < gram_.size(); ++i)
+        if (!mesh_.conductors[i].perfect())
+            terms.push_back(
+                {gram_[i], [conductor = mesh_.conductors[i]](Complex s) { return sheet_impedance(conductor, s); }});
+    for (std::size_t i = 0; i < permittivities_.size(); ++i)
+        terms.push_back({basis_.polarisation_mass[i], [permittivity = permittivities_[i]](Complex s) {
+                             return polarisation_factor(permittivity, s);
+                         }});
+    for (std::size_t i = 0; i < parts_.size(); ++i) {
+        const Eigen::SparseMatrix<double> v = Eigen::MatrixXd(lumped_vectors_.col(static_cast<int>(i))).sparseView();
+        terms.push_back({v * v.transpose(), [part = parts_[i]](Complex s) { return part_impedance(part, s); }});
+    }
+    return terms;
+}
+
 }  // namespace annulet

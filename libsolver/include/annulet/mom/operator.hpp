@@ -7,13 +7,23 @@
 #include <annulet/mom/permittivity.hpp>
 
 #include <Eigen/Core>
+#include <Eigen/SparseCore>
 
+#include <complex>
+#include <functional>
 #include <memory>
 #include <vector>
 
 namespace annulet {
 
 struct PairTables;  // quadrature tables and near-field statics (src/mom)
+
+/// A part of the matrix whose dependence on s = sigma + jw is known exactly: `factor`(s) times `matrix`, unknowns x
+/// unknowns, symmetric. `factor` is analytic near the imaginary axis, with factor(conj s) = conj factor(s), ohm.
+struct ExactTerm {
+    Eigen::SparseMatrix<double> matrix;
+    std::function<std::complex<double>(std::complex<double> s)> factor;
+};
 
 /// Z_mn = jw mu0 <f_m, G f_n> + (1/jw eps0) <div f_m, G div f_n> + surface impedance + lumped parts, with
 /// G = exp(-jkR)/(4 pi R) [Harrington1968]; with a ground plane G acts on the images too.
@@ -49,6 +59,9 @@ public:
     /// Sum over conductors of the impedance of the sheet (ohm) or of the round wire (ohm/m) times <f_m, f_n>: ohm,
     /// unknowns x unknowns.
     Eigen::SparseMatrix<std::complex<double>> surface_impedance_matrix(double frequency_hz) const;
+
+    /// All that Z holds beside the two potentials: surface impedances, masses of the sheets, lumped parts. Independent of this object.
+    std::vector<ExactTerm> exact_terms() const;
 
     const PairTables& pair_tables() const { return *tables_; }
 
