@@ -110,10 +110,12 @@ template <typename Vector>
 auto unpack(Index n, const Vector& packed) {
     using Scalar = typename Vector::Scalar;
     Eigen::Matrix<Scalar, Eigen::Dynamic, Eigen::Dynamic> full(n, n);
-    for (Index c = 0; c < n; ++c) {
-        full.col(c).tail(n - c) = packed.segment(packed_column(n, c), n - c);
-        full.row(c).tail(n - c) = full.col(c).tail(n - c).transpose();
-    }
+    for (Index c = 0; c < n; ++c) full.col(c).tail(n - c) = packed.segment(packed_column(n, c), n - c);
+    constexpr Index tile = 32;  // columns and rows of one tile share the cache
+    for (Index column = 0; column < n; column += tile)
+        for (Index row = column; row < n; row += tile)
+            for (Index c = column; c < std::min(column + tile, n); ++c)
+                for (Index r = std::max(row, c + 1); r < std::min(row + tile, n); ++r) full(c, r) = full(r, c);
     return full;
 }
 
@@ -243,15 +245,24 @@ VectorXcd AffineOperator::coefficient_derivatives(Complex s) const {
     return all;
 }
 
+// On the imaginary axis factors are real or imaginary, so each term enters one of both parts only.
 VectorXcd AffineOperator::sum_terms(const VectorXcd& factor) const {
     VectorXcd packed(terms_.rows());
     const VectorXd real = factor.real(), imaginary = factor.imag();
-    constexpr Index block = 4096;  // rows that stay in the cache over all terms
+    constexpr Index block = 512;  // rows that stay in the cache over all terms
+    const Index half = factor.size() / 2;
 #pragma omp parallel for schedule(static)
     for (Index first = 0; first < packed.size(); first += block) {
         const Index rows = std::min(block, packed.size() - first);
-        packed.segment(first, rows).real() = terms_.middleRows(first, rows) * real;
-        packed.segment(first, rows).imag() = terms_.middleRows(first, rows) * imaginary;
+        const auto part = [&](const VectorXd& weight) {
+            VectorXd sum = VectorXd::Zero(rows);
+            for (Index from : {Index{0}, half})
+                if (!weight.segment(from, half).isZero(0))
+                    sum += terms_.block(first, from, rows, half) * weight.segment(from, half);
+            return sum;
+        };
+        packed.segment(first, rows).real() = part(real);
+        packed.segment(first, rows).imag() = part(imaginary);
     }
     return packed;
 }

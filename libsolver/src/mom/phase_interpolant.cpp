@@ -23,10 +23,17 @@ Eigen::VectorXd as_vector(const std::vector<double>& values) {
 }  // namespace
 
 Eigen::VectorXcd lagrange(const Eigen::VectorXd& node, Complex z) {
-    Eigen::VectorXcd value = Eigen::VectorXcd::Ones(node.size());
-    for (Eigen::Index q = 0; q < node.size(); ++q)
-        for (Eigen::Index i = 0; i < node.size(); ++i)
-            if (i != q) value[q] *= (z - node[i]) / (node[q] - node[i]);
+    const Eigen::Index n = node.size();
+    Eigen::VectorXcd value(n);
+    Complex before = 1;  // product of z - node over the nodes before q, then over those after
+    for (Eigen::Index q = 0; q < n; before *= z - node[q], ++q) value[q] = before;
+    Complex after = 1;
+    for (Eigen::Index q = n - 1; q >= 0; after *= z - node[q], --q) {
+        double scale = 1;
+        for (Eigen::Index i = 0; i < n; ++i)
+            if (i != q) scale *= node[q] - node[i];
+        value[q] *= after / scale;
+    }
     return value;
 }
 

@@ -46,16 +46,13 @@ VectorXcd factor_derivatives_at(const AffineOperator& affine, Complex s) {
     return all;
 }
 
-MatrixXcd weighted_sum(const std::vector<MatrixXd>& terms, const VectorXcd& factor) {
-    MatrixXd real = factor[0].real() * terms[0], imaginary = factor[0].imag() * terms[0];
-    for (std::size_t q = 1; q < terms.size(); ++q) {
-        real += factor[static_cast<Index>(q)].real() * terms[q];
-        imaginary += factor[static_cast<Index>(q)].imag() * terms[q];
-    }
-    MatrixXcd sum(real.rows(), real.cols());
-    sum.real() = real;
-    sum.imag() = imaginary;
-    return sum;
+/// Symmetric n x n from its lower triangle, packed column by column.
+MatrixXcd symmetric_from(const Eigen::VectorXd& real, const Eigen::VectorXd& imaginary, Index n) {
+    MatrixXcd full(n, n);
+    Index at = 0;
+    for (Index c = 0; c < n; ++c)
+        for (Index r = c; r < n; ++r, ++at) full(c, r) = full(r, c) = Complex(real[at], imaginary[at]);
+    return full;
 }
 
 }  // namespace
@@ -125,14 +122,25 @@ void ReducedModel::project(const AffineOperator& affine, const MatrixXd& columns
     affine.for_each_term([&](int q, const MatrixXd& term) { extend(static_cast<std::size_t>(q), term * columns); });
     for (std::size_t i = 0; i < affine.exact_terms().size(); ++i)
         extend(static_cast<std::size_t>(affine.terms()) + i, affine.exact_terms()[i].matrix * columns);
+    packed_.resize(after * (after + 1) / 2, static_cast<Index>(projected_.size()));
+    for (std::size_t q = 0; q < projected_.size(); ++q) {
+        auto column = packed_.col(static_cast<Index>(q));
+        Index at = 0;
+        for (Index c = 0; c < after; at += after - c, ++c)
+            column.segment(at, after - c) = projected_[q].col(c).tail(after - c);
+    }
+}
+
+MatrixXcd ReducedModel::weighted_sum(const VectorXcd& factor) const {
+    return symmetric_from(packed_ * factor.real(), packed_ * factor.imag(), size());
 }
 
 MatrixXcd ReducedModel::matrix(const AffineOperator& affine, Complex s) const {
-    return weighted_sum(projected_, factors_at(affine, s));
+    return weighted_sum(factors_at(affine, s));
 }
 
 MatrixXcd ReducedModel::derivative(const AffineOperator& affine, Complex s) const {
-    return weighted_sum(projected_, factor_derivatives_at(affine, s));
+    return weighted_sum(factor_derivatives_at(affine, s));
 }
 
 MatrixXcd ReducedModel::solve(const AffineOperator& affine, Complex s) const {

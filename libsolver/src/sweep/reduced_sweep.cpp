@@ -1,6 +1,7 @@
 // Symbols: Z(s) operator, v port vectors, y reduced solution, r = v - Z V y, E = r^T Z^-1 r its error in Y.
 #include <annulet/core/constants.hpp>
 #include <annulet/core/diagnostics.hpp>
+#include <annulet/numerics/blas_threads.hpp>
 #include <annulet/numerics/symmetric_solver.hpp>
 #include <annulet/sweep/reduced_basis.hpp>
 
@@ -32,6 +33,12 @@ constexpr double estimate_margin = 3, verified_margin = 3;
 
 Complex on_axis(double frequency_hz) {
     return {0, 2 * constants::pi * frequency_hz};
+}
+
+/// Starting threads costs more than they save on small matrices.
+int suited_threads(int unknowns) {
+    constexpr int large = 1500;
+    return unknowns < large ? 1 : BlasThreads::current();
 }
 
 double seconds_since(std::chrono::steady_clock::time_point start) {
@@ -71,6 +78,7 @@ double ReducedSweep::difference(double frequency_hz, const MatrixXcd& a, const M
 }
 
 void ReducedSweep::run(Progress* progress) {
+    const BlasThreads threads(suited_threads(affine_->op().unknowns()));
     const auto step = [&](double error_left) {
         checkpoint(progress, fmt::format("solve (error {:.1e})", error_left), solved_hz_.size(), 0);
     };
@@ -239,6 +247,7 @@ std::vector<double> ReducedSweep::shifts() const {
 }
 
 std::vector<ReducedPole> ReducedSweep::poles(std::span<const double> termination_ohm) const {
+    const BlasThreads threads(1);
     return model_.poles(*affine_, shifts(), termination_ohm);
 }
 

@@ -57,10 +57,12 @@ public:
 private:
     Eigen::MatrixXd new_columns(const Eigen::MatrixXcd& currents) const;
     void project(const AffineOperator& affine, const Eigen::MatrixXd& columns);
+    Eigen::MatrixXcd weighted_sum(const Eigen::VectorXcd& factor) const;
 
     Eigen::MatrixXd basis_, ports_;
     std::vector<Eigen::MatrixXd> images_;     ///< T_q V and then exact terms times V: unknowns x size
     std::vector<Eigen::MatrixXd> projected_;  ///< V^T of these: size x size
+    Eigen::MatrixXd packed_;                  ///< their lower triangles, one column per term
     Eigen::MatrixXd port_vectors_;
 };
 
