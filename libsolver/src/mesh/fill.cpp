@@ -14,7 +14,6 @@ constexpr double room_share = 0.4;      // of the way to the next edge that laye
 constexpr double steepest_slope = 0.5;  // of the height of layers along the edge
 constexpr double widest_mitre = 1.6;
 constexpr double worthwhile = 0.6;  // least height of layers, in first layers
-constexpr int most_layers = 5;
 constexpr int most_repairs = 12;
 
 struct Corner {
@@ -100,10 +99,10 @@ private:
                 first = std::min(first, corner.first_m);
                 longest = std::max(longest, corner.shares_edges_m);
             }
-        if (longest == 0) return 0;
+        if (longest == 0 || request_.most_layers == 0) return 0;
         const double g = request_.growth;
         const double count = std::log1p(g * std::min(longest * request_.refine, request_.h_max_m) * 0.7 / first) / g;
-        return std::clamp(static_cast<int>(std::lround(count)), 1, most_layers);
+        return std::clamp(static_cast<int>(std::lround(count)), 1, request_.most_layers);
     }
 
     void set_heights(Ring2& corners) {
