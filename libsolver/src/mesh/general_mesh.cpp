@@ -16,7 +16,7 @@ namespace {
 
 constexpr double infinity = std::numeric_limits<double>::infinity();
 constexpr double metal_growth = 0.5;  // of triangles and of spacing along outlines, per distance
-constexpr double corner_cells = 1.7;      // first step along the outline from a corner, in widths of the edge layer
+constexpr double corner_cells = 1.7;  // first step along the outline from a corner, in widths of the edge layer
 constexpr double sharp_turn_rad = 0.3;
 constexpr double shortest_of_width = 0.02;
 constexpr double fewest_cells_per_gap = 2;
