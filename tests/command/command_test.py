@@ -57,6 +57,29 @@ class Command(unittest.TestCase):
             self.assertIn(text, result.stdout)
         self.assertLessEqual(max(map(len, result.stdout.splitlines())), 100)
 
+    def test_check_solves_nothing_and_says_so(self):
+        result = self.run_program("check", RING)
+        self.assertEqual(result.returncode, 0, result.stderr)
+        for text in ("Mesh ", "Memory ", "cells of laminate", "no rules of fabrication are given"):
+            self.assertIn(text, result.stdout)
+        self.assertEqual(self.names(), [])
+
+    def test_check_fails_on_a_broken_rule(self):
+        model = self.folder / "narrow.toml"
+        model.write_text((MODELS / "snow-depth-2442.toml").read_text() + '\n[fabrication]\nminimum_slot = "2 mm"\n')
+        result = self.run_program("check", model, "--json", "-")
+        self.assertEqual(result.returncode, 1, result.stderr)
+        found = json.loads(result.stdout)["findings"]
+        self.assertEqual([finding["kind"] for finding in found], ["slot"])
+        self.assertAlmostEqual(found[0]["measured_m"], 1.5e-3, delta=2e-5)
+
+    def test_draw_writes_one_drawing(self):
+        result = self.run_program("draw", RING, "--mesh")
+        self.assertEqual(result.returncode, 0, result.stderr)
+        self.assertEqual(self.names(), ["river-gauge-868.svg"])
+        self.assertIn("P1 feed", (self.folder / "river-gauge-868.svg").read_text())
+        self.assertEqual(self.run_program("draw", RING).returncode, 0, "its own file may be replaced")
+
     def test_json_has_the_agreed_keys_in_their_order(self):
         result = self.sweep("--json", "-")
         self.assertEqual((result.returncode, result.stderr), (0, ""))

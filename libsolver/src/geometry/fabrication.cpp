@@ -10,10 +10,10 @@ namespace {
 
 constexpr double arc_error_m = 2e-7;
 constexpr double infinity = std::numeric_limits<double>::infinity();
-constexpr double facing_cosine = -0.7;  // of the normals of edges that face each other
-constexpr double grown_share = 0.02;    // of the rule: how far around a residue its edges are looked for
-constexpr double least_share = 1e-3;    // of the rule squared: area of a residue worth a look
-constexpr double detour = 4;            // along the outline, over straight across, of points that face each other
+constexpr double facing_cosine = -0.94;  // of the normals of edges that face each other
+constexpr double grown_share = 0.02;     // of the rule: how far around a residue its edges are looked for
+constexpr double least_share = 1e-3;     // of the rule squared: area of a residue worth a look
+constexpr double detour = 4;             // along the outline, over straight across, of points that face each other
 constexpr int most_samples = 400;
 
 Loops2 opened(const Loops2& region, double radius_m) {
