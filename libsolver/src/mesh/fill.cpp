@@ -13,8 +13,8 @@ namespace {
 constexpr double room_share = 0.4;      // of the way to the next edge that layers may take
 constexpr double steepest_slope = 0.5;  // of the height of layers along the edge
 constexpr double widest_mitre = 1.6;
-constexpr double worthwhile = 0.6;  // least height of layers, in first layers
-constexpr int most_layers = 5;
+constexpr double worthwhile = 0.6;      // least height of layers, in first layers
+constexpr double shortest_front = 0.4;  // of the edge it belongs to
 constexpr int most_repairs = 12;
 
 struct Corner {
@@ -23,6 +23,9 @@ struct Corner {
     double first_m = 0;
     double height_m = 0;
     double shares_edges_m = 0;  ///< mean length of the two edges
+    double turn_rad = 0;
+    bool ends_in_next = false;    ///< its last layer shares the point of the next corner's
+    bool ends_in_before = false;  ///< or of the corner before
 };
 
 using Ring2 = std::vector<Corner>;
@@ -53,6 +56,7 @@ public:
     FilledRegion made() {
         for (int k = 0; k < most_repairs && repair(k + 2 >= most_repairs); ++k) {
         }
+        for (Ring2& corners : rings_) merge_fronts(corners);
         std::vector<std::vector<std::vector<int>>> lines;  // loop, layer, corner
         for (const Ring2& corners : rings_) lines.push_back(add_first(corners));
         for (std::size_t l = 0; l < rings_.size(); ++l) add_layers(rings_[l], lines[l]);
@@ -72,6 +76,7 @@ private:
             corner.at = loop[i];
             corner.first_m = request_.first_layer_m[l][i];
             corner.shares_edges_m = 0.5 * (in.norm() + out.norm());
+            corner.turn_rad = std::abs(std::atan2(cross(in, out), in.dot(out)));
             const double cosine2 = 1 + normal_in.dot(normal_out);
             corner.inward = cosine2 > 1e-6 ? Vec2((normal_in + normal_out) / cosine2) : left_of(normal_in);
             // Outside a sharp corner the layers are rounded off.
@@ -100,10 +105,10 @@ private:
                 first = std::min(first, corner.first_m);
                 longest = std::max(longest, corner.shares_edges_m);
             }
-        if (longest == 0) return 0;
+        if (longest == 0 || request_.most_layers == 0) return 0;
         const double g = request_.growth;
         const double count = std::log1p(g * std::min(longest * request_.refine, request_.h_max_m) * 0.7 / first) / g;
-        return std::clamp(static_cast<int>(std::lround(count)), 1, most_layers);
+        return std::clamp(static_cast<int>(std::lround(count)), 1, request_.most_layers);
     }
 
     void set_heights(Ring2& corners) {
@@ -169,6 +174,24 @@ private:
         return changed;
     }
 
+    // Around corners the front may come out much shorter than the edge: its points are joined there.
+    static void merge_fronts(Ring2& corners) {
+        for (std::size_t i = 0; i < corners.size(); ++i) {
+            Corner &a = corners[i], &b = corners[(i + 1) % corners.size()];
+            if (a.height_m <= 0 || b.height_m <= 0 || a.ends_in_before || a.ends_in_next) continue;
+            const double before = (b.at - a.at).norm(), after = (front(b) - front(a)).norm();
+            if (after > shortest_front * before) continue;
+            (a.turn_rad > b.turn_rad ? b.ends_in_before : a.ends_in_next) = true;
+        }
+        for (std::size_t i = 0; i < corners.size(); ++i) {
+            Corner& a = corners[i];
+            const std::size_t n = corners.size();
+            const Corner &before = corners[(i + n - 1) % n], &next = corners[(i + 1) % n];
+            if (a.ends_in_next && (next.ends_in_before || next.ends_in_next)) a.ends_in_next = false;
+            if (a.ends_in_before && (before.ends_in_next || before.ends_in_before)) a.ends_in_before = false;
+        }
+    }
+
     std::vector<std::vector<int>> add_first(const Ring2& corners) {
         std::vector<int> line;
         for (const Corner& corner : corners) {
@@ -186,13 +209,19 @@ private:
             const double share =
                 std::expm1(request_.growth * layers_[l] * k / steps) / std::expm1(request_.growth * layers_[l]);
             std::vector<int> line = lines.back();
-            for (std::size_t i = 0; i < corners.size(); ++i)
-                if (corners[i].height_m > 0) {
+            const std::size_t n = corners.size();
+            const auto merged = [&](std::size_t i) {
+                return k == steps && (corners[i].ends_in_next || corners[i].ends_in_before);
+            };
+            for (std::size_t i = 0; i < n; ++i)
+                if (corners[i].height_m > 0 && !merged(i)) {
                     line[i] = static_cast<int>(filled_.points.size());
                     filled_.points.push_back(corners[i].at + share * corners[i].height_m * corners[i].inward);
                 }
-            for (std::size_t i = 0; i < corners.size(); ++i) {
-                const std::size_t j = (i + 1) % corners.size();
+            for (std::size_t i = 0; i < n; ++i)
+                if (merged(i)) line[i] = line[(corners[i].ends_in_next ? i + 1 : i + n - 1) % n];
+            for (std::size_t i = 0; i < n; ++i) {
+                const std::size_t j = (i + 1) % n;
                 add_cell({lines.back()[i], lines.back()[j], line[j], line[i]});
             }
             lines.push_back(std::move(line));
@@ -211,7 +240,7 @@ private:
         const bool no_right = node[1] == node[2], no_left = node[0] == node[3];
         if (no_right && no_left) return;
         if (no_right) return add_triangle(node[0], node[1], node[3]);
-        if (no_left) return add_triangle(node[0], node[1], node[2]);
+        if (no_left || node[2] == node[3]) return add_triangle(node[0], node[1], node[2]);
         int dented = -1;
         for (std::size_t i = 0; i < 4; ++i) {
             const Vec2& at = point(node[i]);
@@ -232,7 +261,10 @@ private:
         std::vector<std::pair<Vec2, double>> sizes;
         for (const auto& of_loop : lines) {
             Loop loop;
-            const auto& line = of_loop.back();
+            std::vector<int> line;
+            for (const int node : of_loop.back())
+                if (line.empty() || line.back() != node) line.push_back(node);
+            while (line.size() > 1 && line.front() == line.back()) line.pop_back();
             for (std::size_t i = 0; i < line.size(); ++i) {
                 const Vec2 &before = point(line[(i + line.size() - 1) % line.size()]), &p = point(line[i]),
                            &after = point(line[(i + 1) % line.size()]);

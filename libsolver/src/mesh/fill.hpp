@@ -13,7 +13,8 @@ struct FillRequest {
     std::vector<std::vector<double>> first_layer_m;  ///< per corner: smallest wanted size across the edge; 0: no layer
     double growth = 1;                               ///< of cell size with distance from the edge
     double h_max_m = 0;                              ///< largest cell
-    double refine = 1;                               ///< the loops are already refined
+    int most_layers = 5;
+    double refine = 1;  ///< the loops are already refined
 };
 
 struct FilledRegion {

@@ -50,6 +50,7 @@ struct SlitGap {
 };
 
 struct Layout {
+    std::vector<bool> general;  ///< per metal: left to the mesher of triangles
     std::vector<Piece> pieces;
     std::vector<Span> spans;
     std::vector<SlitGap> slits;

@@ -223,7 +223,7 @@ ConductorKind classify(const Shape& shape) {
     return ribbon_of(shape) ? ConductorKind::strip_like : ConductorKind::general;
 }
 
-std::vector<Piece> lay_out_metal(const Model& model, MeshFaults& faults) {
+std::vector<Piece> lay_out_metal(const Model& model, MeshFaults& faults, const std::vector<bool>& general) {
     std::vector<Piece> pieces;
     for (std::size_t k = 0; k < model.metals.size(); ++k) {
         const Metal& metal = model.metals[k];
@@ -232,7 +232,7 @@ std::vector<Piece> lay_out_metal(const Model& model, MeshFaults& faults) {
             faults.add(metal.where, what + " " + text);
             continue;
         }
-        if (metal.cut) continue;
+        if (metal.cut || (!general.empty() && general[k])) continue;
         if (classify(metal.shape) == ConductorKind::general) {
             faults.add(metal.where, what + " is not a strip: polygons and discs as metal are not yet meshed",
                        "draw it as a ring, a path, a rectangle or a sector with a hole");

@@ -51,7 +51,8 @@ struct Piece {
 enum class ConductorKind { strip_like, general };
 
 /// Divides the metals by the cuts listed after them. Metals at fault are left out of the result.
-std::vector<Piece> lay_out_metal(const Model& model, MeshFaults& faults);
+/// `general`: metals to be left out, or empty.
+std::vector<Piece> lay_out_metal(const Model& model, MeshFaults& faults, const std::vector<bool>& general = {});
 
 /// Strip-like shapes: ring, path, rectangle, sector with a hole.
 ConductorKind classify(const Shape& shape);

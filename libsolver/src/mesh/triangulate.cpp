@@ -28,7 +28,7 @@ constexpr double widest_radius = 0.75;    // circumradius over wanted edge lengt
 constexpr double nearest_vertex = 0.45;   // in wanted edge lengths
 constexpr double flattest_cosine = -0.4;  // at a new point over an edge of the outline
 constexpr int most_passes = 40;
-constexpr int smoothing_passes = 4;
+constexpr int smoothing_passes = 3, smoothing_rounds = 2;
 enum Side { unknown = -1, outside = 0, within = 1 };
 
 Vec2 vec(const Cdt::Point& p) {
@@ -48,7 +48,7 @@ public:
         for (int pass = 0; pass < most_passes && refine() > 0; ++pass) {
         }
         collect();
-        if (result_.points.size() > fixed_) {
+        for (int round = 0; round < smoothing_rounds && result_.points.size() > fixed_; ++round) {
             for (int pass = 0; pass < smoothing_passes; ++pass) smooth();
             build();
             collect();
@@ -162,7 +162,7 @@ private:
 
     const Vec2& point(int i) const { return result_.points[static_cast<std::size_t>(i)]; }
 
-    // Inner points to the mean of their neighbours, where no triangle folds over.
+    // Inner points toward the centre of the triangles around them.
     void smooth() {
         std::vector<std::vector<std::size_t>> around(result_.points.size());
         for (std::size_t t = 0; t < result_.triangles.size(); ++t)
@@ -177,13 +177,35 @@ private:
                 weight += area;
             }
             if (weight <= 0) continue;
-            const Vec2 before = std::exchange(result_.points[i], sum / weight);
-            const bool folded = std::any_of(around[i].begin(), around[i].end(), [&](std::size_t t) {
-                const auto& [a, b, c] = result_.triangles[t];
-                return cross(point(b) - point(a), point(c) - point(a)) <= 0;
-            });
-            if (folded) result_.points[i] = before;
+            improve(i, sum / weight, around[i]);
         }
+    }
+
+    // Sine of the smallest angle, negative if folded.
+    double quality(std::size_t triangle) const {
+        const auto& [a, b, c] = result_.triangles[triangle];
+        const Vec2 u = point(b) - point(a), v = point(c) - point(b), w = point(a) - point(c);
+        const double u2 = u.squaredNorm(), v2 = v.squaredNorm(), w2 = w.squaredNorm();
+        // Twice the area over the product of the two longer sides.
+        return cross(u, v) * std::sqrt(std::min({u2, v2, w2}) / (u2 * v2 * w2));
+    }
+
+    double worst(const std::vector<std::size_t>& triangles) const {
+        double least = 1;
+        for (const std::size_t t : triangles) least = std::min(least, quality(t));
+        return least;
+    }
+
+    // Moves a point toward `wanted` as far as its worst triangle gets better.
+    void improve(std::size_t i, const Vec2& wanted, const std::vector<std::size_t>& triangles) {
+        const Vec2 before = result_.points[i];
+        Vec2 best = before;
+        double most = worst(triangles);
+        for (const double step : {1.0, 0.5, 0.25, -0.25}) {
+            result_.points[i] = before + step * (wanted - before);
+            if (const double now = worst(triangles); now > most) most = now, best = result_.points[i];
+        }
+        result_.points[i] = best;
     }
 
     std::span<const Loop> loops_;
