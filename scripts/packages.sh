@@ -2,7 +2,7 @@
 
 packages=(
     g++ cmake ninja-build pkg-config python3
-    libeigen3-dev libboost-dev libopenblas-openmp-dev liblapacke-dev libpolyclipping-dev
+    libeigen3-dev libboost-dev libopenblas-openmp-dev liblapacke-dev libpolyclipping-dev libcgal-dev
     libtomlplusplus-dev libcli11-dev libfmt-dev nlohmann-json3-dev libssl-dev
     libgtest-dev libgmock-dev libbenchmark-dev
 )

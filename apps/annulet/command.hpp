@@ -21,10 +21,13 @@ struct Command {
     std::function<std::function<int()>(CLI::App&)> prepare;
 };
 
+Command check_command();
+Command draw_command();
 Command sweep_command();
+Command prove_command();
 
 inline std::vector<Command> all_commands() {
-    return {sweep_command()};
+    return {check_command(), draw_command(), sweep_command(), prove_command()};
 }
 
 }  // namespace annulet::app

@@ -35,7 +35,7 @@ Json mesh_json(const SolvedModel& solved) {
             {"quadrilaterals", counts.quadrilaterals},
             {"triangles", counts.triangles},
             {"segments", counts.segments},
-            {"laminate_cells", 0}};
+            {"laminate_cells", counts.laminate}};
 }
 
 Json port_json(const PortCurve& curve) {

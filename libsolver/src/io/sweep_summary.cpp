@@ -52,6 +52,7 @@ std::string mesh_line(const SolvedModel& solved) {
     add(counts.quadrilaterals, "quadrilateral");
     add(counts.triangles, "triangle");
     add(counts.segments, "segment");
+    add(counts.laminate, "laminate cell");
     return entry("Mesh", count(solved.op.unknowns(), "unknown") + " on " + cells);
 }
 

@@ -93,6 +93,8 @@ private:
             }
             case Front::Kind::cut_end:
                 return std::clamp(0.5 * front.opening_m, edge / 8, edge);
+            case Front::Kind::sheet_edge:
+                return 0.25 * width;
             case Front::Kind::free_end:
                 break;
         }

@@ -91,7 +91,7 @@ private:
         const int foil = conductor(metal(piece).conductor);
         Row first, last, turned;
         for (std::size_t b = 0; b < blocks; ++b) {
-            const auto lines = block_lines(piece, index, b);
+            const auto lines = block_lines(piece, along_.blocks[index][b], b, across_[index].taus, refine_);
             const std::size_t n = lines[0].size() - 1;
             if (b == 0) {
                 const Row* known = piece.loop ? nullptr : joined_row(index, false, turned);
@@ -107,22 +107,6 @@ private:
             }
         }
         ends_[index].end = last;
-    }
-
-    // Node lines of a block, one per tau.
-    std::vector<std::vector<Vec2>> block_lines(const Piece& piece, std::size_t index, std::size_t block) const {
-        const std::vector<double> fractions = along_.blocks[index][block].fractions(refine_);
-        const std::size_t n = piece.fronts.size();
-        const bool wraps = piece.loop && block + 1 >= n;
-        std::vector<std::vector<Vec2>> lines;
-        for (const double tau : across_[index].taus) {
-            const double from = n == 0 ? 0 : piece.fronts[block].s_m(tau);
-            const double to =
-                n == 0 ? piece.ribbon->length_m()
-                       : piece.fronts[wraps ? 0 : block + 1].s_m(tau) + (wraps ? piece.ribbon->length_m() : 0);
-            lines.push_back(block_nodes(*piece.ribbon, tau, from, to, fractions, n == 0));
-        }
-        return lines;
     }
 
     void add_cells(const Piece& piece, std::size_t block, const Row& from, const Row& to, int foil) {

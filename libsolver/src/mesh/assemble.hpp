@@ -2,6 +2,7 @@
 #pragma once
 
 #include <annulet/mesh/mesh.hpp>
+#include <annulet/mesh/quality.hpp>
 
 #include <vector>
 
@@ -13,9 +14,6 @@ namespace annulet {
 /// Edges between two cells, known before any cell is made.
 double count_unknowns(const Layout& layout, const std::vector<CrossGrid>& across, const AlongGrid& along,
                       double refine);
-
-/// Memory for a dense complex matrix of that order, its factors and work space.
-double matrix_bytes(double unknowns);
 
 /// `across` refined. Throws InputError where a cell would not be convex.
 Mesh assemble(const Model& model, const Layout& layout, const std::vector<CrossGrid>& across, const AlongGrid& along,

@@ -94,4 +94,20 @@ std::vector<Vec2> block_nodes(const Ribbon& ribbon, double tau, double from_m, d
     return nodes;
 }
 
+std::vector<std::vector<Vec2>> block_lines(const Piece& piece, const AlongBlock& along, std::size_t block,
+                                           std::span<const double> taus, double refine) {
+    const std::vector<double> fractions = along.fractions(refine);
+    const std::size_t n = piece.fronts.size();
+    const bool wraps = piece.loop && block + 1 >= n;
+    const double length = piece.ribbon->length_m();
+    std::vector<std::vector<Vec2>> lines;
+    for (const double tau : taus) {
+        const double within = std::clamp(tau, -1.0, 1.0);
+        const double from = n == 0 ? 0 : piece.fronts[block].s_m(within);
+        const double to = n == 0 ? length : piece.fronts[wraps ? 0 : block + 1].s_m(within) + (wraps ? length : 0);
+        lines.push_back(block_nodes(*piece.ribbon, tau, from, to, fractions, n == 0));
+    }
+    return lines;
+}
+
 }  // namespace annulet

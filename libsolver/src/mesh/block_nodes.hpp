@@ -6,6 +6,8 @@
 #include <span>
 #include <vector>
 
+#include "mesh/along_grid.hpp"
+
 namespace annulet {
 
 /// Radii (m) for nodes at angles `angle_rad` (monotonic) so that the polygon about the centre has the area of the
@@ -18,5 +20,10 @@ std::vector<double> area_keeping_radii(std::span<const double> angle_rad, std::s
 /// `closed`: the block goes all around without any front.
 std::vector<Vec2> block_nodes(const Ribbon& ribbon, double tau, double from_m, double to_m,
                               std::span<const double> fractions, bool closed);
+
+/// Node lines of block `block` of a piece, one per tau. Beyond the edges (|tau| > 1) the fronts go on as they meet the
+/// edge, at constant s.
+std::vector<std::vector<Vec2>> block_lines(const Piece& piece, const AlongBlock& along, std::size_t block,
+                                           std::span<const double> taus, double refine);
 
 }  // namespace annulet

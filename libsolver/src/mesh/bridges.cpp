@@ -24,6 +24,8 @@ public:
           a_(bridge.from.head<2>()),
           b_(bridge.to.head<2>()) {}
 
+    bool on_side() const { return on_side_; }
+
     std::optional<Span> placed() {
         if (!sound()) return std::nullopt;
         const double length = (b_ - a_).norm(), tolerance = 1e-6 + 1e-3 * length;
@@ -92,7 +94,8 @@ private:
         const auto is_end = [](Piece::Side side) { return side == Piece::Side::start || side == Piece::Side::end; };
         if (gap.before->piece == gap.after->piece && gap.before->side == gap.after->side)
             return fault("has both ends of its bridge on the same edge of the metal");
-        if (!is_end(gap.before->side) || !is_end(gap.after->side))
+        on_side_ = !is_end(gap.before->side) || !is_end(gap.after->side);
+        if (on_side_)
             return fault("lands on the side of a strip, which is not yet meshed", "let it bridge two ends of strip");
         Span span;
         span.place = place_;
@@ -151,9 +154,17 @@ private:
     const Bridge& bridge_;
     MeshFaults& faults_;
     Vec2 a_, b_;
+    bool on_side_ = false;
 };
 
 }  // namespace
+
+bool lands_on_side(const Model& model, const Layout& layout, const Place& drawn, const Bridge& bridge) {
+    MeshFaults unused;
+    BridgePlacer placer(model, layout, 0, drawn, bridge, unused);
+    placer.placed();
+    return placer.on_side();
+}
 
 std::optional<Span> place_bridge(const Model& model, const Layout& layout, int place, const Place& drawn,
                                  const Bridge& bridge, MeshFaults& faults) {

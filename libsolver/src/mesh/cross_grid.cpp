@@ -100,7 +100,8 @@ bool equalise(std::vector<CrossGrid>& grids, const Link& link, const AcrossMap& 
 std::vector<Link> links_of(Layout& layout) {
     std::vector<Link> links;
     for (Span& span : layout.spans) links.push_back({&span.from, &span.to});
-    for (Join& join : layout.joins) links.push_back({&join.from, &join.to});
+    for (auto* joins : {&layout.joins, &layout.aligned})
+        for (Join& join : *joins) links.push_back({&join.from, &join.to});
     return links;
 }
 

@@ -4,6 +4,8 @@
 #include <cmath>
 
 #include "mesh/bridges.hpp"
+#include "mesh/general_metal.hpp"
+#include "mesh/sheet_outline.hpp"
 
 namespace annulet {
 
@@ -14,8 +16,6 @@ bool same(const Vec2& a, const Vec2& b, double within_m) {
 }
 
 void check_unsupported(const Model& model, MeshFaults& faults) {
-    for (const Wire& wire : model.wires)
-        faults.add(wire.where, fmt::format("wire '{}' is not yet meshed", wire.name), "leave it out for now");
     for (const Via& via : model.vias)
         faults.add(via.where, fmt::format("via '{}' is not yet meshed", via.name), "leave it out for now");
 }
@@ -67,26 +67,28 @@ std::vector<Join> find_joins(const Model& model, const std::vector<Piece>& piece
 Layout lay_out(const Model& model, MeshFaults& faults) {
     Layout layout;
     check_unsupported(model, faults);
-    layout.pieces = lay_out_metal(model, faults);
+    layout.general = general_metals(model);
+    layout.pieces = lay_out_metal(model, faults, layout.general);
     // A port on metal that is at fault would only repeat that fault.
     if (!faults.empty()) return layout;
-    if (layout.pieces.empty()) {
+    if (layout.pieces.empty() && model.wires.empty() &&
+        std::find(layout.general.begin(), layout.general.end(), true) == layout.general.end()) {
         faults.add(model.metals.empty() ? Position{} : model.metals[0].where, "there is no metal to mesh");
         return layout;
     }
     const std::vector<Place> places = places_of(model);
     for (std::size_t k = 0; k < places.size(); ++k) {
         const Place& place = places[k];
+        const std::vector<std::size_t> touched = metals_touched(model, place.placement);
+        if (!touched.empty() && layout.general[touched[0]]) continue;
         if (const auto* bridge = std::get_if<Bridge>(&place.placement)) {
             if (auto span = place_bridge(model, layout, static_cast<int>(k), place, *bridge, faults))
                 layout.spans.push_back(*span);
         } else if (const auto* across = std::get_if<Across>(&place.placement)) {
             place_slit(model, layout, static_cast<int>(k), place, *across, faults);
-        } else {
-            faults.add(place.where, fmt::format("{} is on wire '{}': wires are not yet meshed", place.what,
-                                                std::get<OnWire>(place.placement).wire));
         }
     }
+    place_sheet_edges(model, layout, faults);
     for (Piece& piece : layout.pieces) finish_fronts(piece, model, faults);
     layout.joins = find_joins(model, layout.pieces);
     check_contacts(model, layout, faults);

@@ -50,10 +50,12 @@ struct SlitGap {
 };
 
 struct Layout {
+    std::vector<bool> general;  ///< per metal: left to the mesher of triangles
     std::vector<Piece> pieces;
     std::vector<Span> spans;
     std::vector<SlitGap> slits;
     std::vector<Join> joins;
+    std::vector<Join> aligned;  ///< ends that face each other over bare sheet: their node lines correspond
 };
 
 /// Everything on the metal, faults collected.

@@ -223,7 +223,7 @@ ConductorKind classify(const Shape& shape) {
     return ribbon_of(shape) ? ConductorKind::strip_like : ConductorKind::general;
 }
 
-std::vector<Piece> lay_out_metal(const Model& model, MeshFaults& faults) {
+std::vector<Piece> lay_out_metal(const Model& model, MeshFaults& faults, const std::vector<bool>& general) {
     std::vector<Piece> pieces;
     for (std::size_t k = 0; k < model.metals.size(); ++k) {
         const Metal& metal = model.metals[k];
@@ -232,7 +232,7 @@ std::vector<Piece> lay_out_metal(const Model& model, MeshFaults& faults) {
             faults.add(metal.where, what + " " + text);
             continue;
         }
-        if (metal.cut) continue;
+        if (metal.cut || (!general.empty() && general[k])) continue;
         if (classify(metal.shape) == ConductorKind::general) {
             faults.add(metal.where, what + " is not a strip: polygons and discs as metal are not yet meshed",
                        "draw it as a ring, a path, a rectangle or a sector with a hole");
@@ -293,6 +293,37 @@ Obstacle insert_slit(Piece& piece, const Track& track, int slit) {
     piece.fronts.push_back(std::move(b));
     sort_fronts(piece);
     return {};
+}
+
+bool insert_sheet_edge(Piece& piece, std::function<double(double)> s_m) {
+    const double near = smooth_joint_margin * piece.ribbon->narrowest_m(), length = piece.ribbon->length_m();
+    const auto shares_place = [&](const Front& a, const Front& b) {
+        const auto taus = probe_taus();
+        return std::all_of(taus.begin(), taus.end(),
+                           [&](double tau) { return std::abs(a.s_m(tau) - b.s_m(tau)) < near; });
+    };
+    for (const double turn : {0.0, length, -length}) {
+        if (turn != 0 && !piece.ribbon->closed()) continue;
+        Front edge{Front::Kind::sheet_edge, shifted(s_m, turn)};
+        bool known = false, inside_slit = false;
+        std::size_t before = 0, after = 0;
+        for (std::size_t i = 0; i < piece.fronts.size(); ++i) {
+            const Front& front = piece.fronts[i];
+            known = known || shares_place(front, edge);
+            const bool ahead = order(front, edge, near) == Order::before;
+            before += ahead ? 1 : 0;
+            after += order(edge, front, near) == Order::before ? 1 : 0;
+            inside_slit = ahead ? front.enters_slit : inside_slit;
+        }
+        if (known) return true;
+        const bool beyond = !piece.loop && (before == 0 || after == 0) && before + after == piece.fronts.size();
+        if (beyond || (piece.loop && turn != 0)) continue;
+        if (before + after != piece.fronts.size() || inside_slit) return false;
+        piece.fronts.push_back(std::move(edge));
+        sort_fronts(piece);
+        return true;
+    }
+    return true;
 }
 
 void finish_fronts(Piece& piece, const Model& model, MeshFaults& faults) {

@@ -19,7 +19,7 @@ inline constexpr double smooth_joint_margin = 0.02;
 
 /// A line across a strip on which nodes must lie.
 struct Front {
-    enum class Kind { free_end, cut_end, joint, slit_side };
+    enum class Kind { free_end, cut_end, joint, slit_side, sheet_edge };
     Kind kind = Kind::free_end;
     std::function<double(double)> s_m;  ///< of tau
     bool sharp = false;                 ///< a joint where the direction jumps
@@ -51,7 +51,8 @@ struct Piece {
 enum class ConductorKind { strip_like, general };
 
 /// Divides the metals by the cuts listed after them. Metals at fault are left out of the result.
-std::vector<Piece> lay_out_metal(const Model& model, MeshFaults& faults);
+/// `general`: metals to be left out, or empty.
+std::vector<Piece> lay_out_metal(const Model& model, MeshFaults& faults, const std::vector<bool>& general = {});
 
 /// Strip-like shapes: ring, path, rectangle, sector with a hole.
 ConductorKind classify(const Shape& shape);
@@ -65,6 +66,10 @@ struct Obstacle {
 
 /// Puts a slit's two fronts into the piece, if nothing stands in the way.
 Obstacle insert_slit(Piece& piece, const Track& track, int slit);
+
+/// Puts a front in, where the edge of a sheet crosses the piece, unless it lies beyond the ends or on another front.
+/// False if something stands in the way.
+bool insert_sheet_edge(Piece& piece, std::function<double(double)> s_m);
 
 /// Adds the joints of the centre line as fronts, drops smooth ones that another front crosses, and reports corners
 /// that one crosses; sets block_slit and the outline. To be called when all slits are in.

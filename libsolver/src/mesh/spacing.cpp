@@ -28,27 +28,28 @@ double AcrossMap::to_tau(double u) const {
     return -std::cos(theta);
 }
 
-SizeField::SizeField(double length_m, double h_from_m, double h_to_m, double h_max_m)
+SizeField::SizeField(double length_m, double h_from_m, double h_to_m, double h_max_m, double growth_per_m_m)
     : length_m_(length_m),
       h_from_m_(std::min(h_from_m, h_max_m)),
       h_to_m_(std::min(h_to_m, h_max_m)),
-      h_max_m_(h_max_m) {
-    ramp_from_m_ = std::min((h_max_m_ - h_from_m_) / growth, length_m_);
-    ramp_to_m_ = std::min((h_max_m_ - h_to_m_) / growth, length_m_);
+      h_max_m_(h_max_m),
+      growth_(growth_per_m_m) {
+    ramp_from_m_ = std::min((h_max_m_ - h_from_m_) / growth_, length_m_);
+    ramp_to_m_ = std::min((h_max_m_ - h_to_m_) / growth_, length_m_);
     if (ramp_from_m_ + ramp_to_m_ > length_m_) {
-        const double meet = 0.5 * (length_m_ + (h_to_m_ - h_from_m_) / growth);
+        const double meet = 0.5 * (length_m_ + (h_to_m_ - h_from_m_) / growth_);
         ramp_from_m_ = std::clamp(meet, 0.0, length_m_);
         ramp_to_m_ = length_m_ - ramp_from_m_;
     }
-    cells_from_ = std::log1p(growth * ramp_from_m_ / h_from_m_) / growth;
+    cells_from_ = std::log1p(growth_ * ramp_from_m_ / h_from_m_) / growth_;
     cells_mid_ = (length_m_ - ramp_from_m_ - ramp_to_m_) / h_max_m_;
-    total_ = cells_from_ + cells_mid_ + std::log1p(growth * ramp_to_m_ / h_to_m_) / growth;
+    total_ = cells_from_ + cells_mid_ + std::log1p(growth_ * ramp_to_m_ / h_to_m_) / growth_;
 }
 
 double SizeField::position_m(double count) const {
-    if (count <= cells_from_) return h_from_m_ * std::expm1(growth * count) / growth;
+    if (count <= cells_from_) return h_from_m_ * std::expm1(growth_ * count) / growth_;
     if (count <= cells_from_ + cells_mid_) return ramp_from_m_ + (count - cells_from_) * h_max_m_;
-    return length_m_ - h_to_m_ * std::expm1(growth * (total_ - count)) / growth;
+    return length_m_ - h_to_m_ * std::expm1(growth_ * (total_ - count)) / growth_;
 }
 
 double whole_cells(double cells) {

@@ -23,7 +23,7 @@ private:
 /// Cell sizes along a stretch of length L: h(d) = min(h_max, h_from + growth d, h_to + growth (L - d)).
 class SizeField {
 public:
-    SizeField(double length_m, double h_from_m, double h_to_m, double h_max_m);
+    SizeField(double length_m, double h_from_m, double h_to_m, double h_max_m, double growth_per_m_m = growth);
     /// Integral of dd/h: the number of cells, not yet rounded.
     double cells() const { return total_; }
     /// Distance d from the start at which `count` cells are used up.
@@ -32,7 +32,7 @@ public:
     static constexpr double growth = 0.6;
 
 private:
-    double length_m_, h_from_m_, h_to_m_, h_max_m_;
+    double length_m_, h_from_m_, h_to_m_, h_max_m_, growth_;
     double ramp_from_m_, ramp_to_m_;  ///< lengths over which the size grows
     double cells_from_, cells_mid_, total_;
 };

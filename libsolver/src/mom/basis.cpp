@@ -3,6 +3,7 @@
 #include <Eigen/Geometry>
 
 #include <algorithm>
+#include <cmath>
 #include <map>
 #include <utility>
 
@@ -27,6 +28,15 @@ Key key_of(const Cell& cell, int slot) {
     return {std::min(a, b), std::max(a, b)};
 }
 
+constexpr double on_plane_m = 1e-9;
+
+bool grounded(const Mesh& mesh, const Key& key) {
+    return mesh.ground_plane_m && key.second < 0 &&
+           std::abs(mesh.nodes[at(key.first)].z() - *mesh.ground_plane_m) <= on_plane_m;
+}
+
+constexpr std::pair<int, int> ground{-1, -1};
+
 }  // namespace
 
 Basis make_basis(const Mesh& mesh) {
@@ -40,12 +50,21 @@ Basis make_basis(const Mesh& mesh) {
     }
     // In the order in which the second sharer appears: neighbours in the mesh stay neighbours in the matrix.
     std::vector<std::pair<std::pair<int, int>, std::pair<int, int>>> functions;
-    for (const auto& [key, cells] : sharers)
-        for (std::size_t i = 1; i < cells.size(); ++i) functions.emplace_back(cells[i], cells[0]);
+    for (const auto& [key, cells] : sharers) {
+        // Into the ground plane every wire end carries its current by itself: it flows on in the image.
+        const bool into_ground = grounded(mesh, key);
+        for (std::size_t i = into_ground ? 0 : 1; i < cells.size(); ++i)
+            functions.emplace_back(cells[i], into_ground ? ground : cells[0]);
+    }
     std::sort(functions.begin(), functions.end());
     BasisTriplets triplets;
     for (const auto& [into, from] : functions) {
         const int n = basis.unknowns++;
+        if (from == ground) {
+            triplets.slots.emplace_back(into.second, n, 1.0);
+            triplets.divergence.emplace_back(into.first, n, 1.0);
+            continue;
+        }
         triplets.slots.emplace_back(from.second, n, 1.0);
         triplets.slots.emplace_back(into.second, n, -1.0);
         triplets.divergence.emplace_back(from.first, n, 1.0);

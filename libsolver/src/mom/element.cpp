@@ -78,7 +78,8 @@ PlanarElement PlanarElement::mirrored(double plane_z_m) const {
     const auto point = [&](Vec3& p) { p.z() = 2 * plane_z_m - p.z(); };
     for (auto& p : image.corner) point(p);
     point(image.apex);
-    image.normal.z() = -image.normal.z();
+    // The corners keep their order, so the normal that sees them counter-clockwise is minus the mirrored one.
+    image.normal = Vec3(-normal.x(), -normal.y(), normal.z());
     // f'(r) = M f(M r): with M r = D r + 2h z, D = diag(1, 1, -1): c' = D c + 2 h d z D = D c - 2 h d z
     for (auto& row : image.constant)
         for (auto& c : row) c = Vec3(c.x(), c.y(), -c.z() - 2 * plane_z_m * slope_per_m2);

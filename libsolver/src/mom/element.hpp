@@ -2,7 +2,6 @@
 // local function is affine, f = c + d r, with the same d on all triangles (constant charge density).
 #pragma once
 
-
 #include <array>
 #include <vector>
 

@@ -8,9 +8,13 @@ namespace annulet {
 
 namespace {
 
-std::size_t at(int i) { return static_cast<std::size_t>(i); }
+std::size_t at(int i) {
+    return static_cast<std::size_t>(i);
+}
 
-int corners(CellKind kind) { return kind == CellKind::quadrilateral ? 4 : 3; }
+int corners(CellKind kind) {
+    return kind == CellKind::quadrilateral ? 4 : 3;
+}
 
 Element metal_element(const Mesh& mesh, const Cell& cell) {
     Element e;

@@ -25,9 +25,7 @@ struct Element {
     int corners() const { return kind == CellKind::quadrilateral ? 4 : kind == CellKind::triangle ? 3 : 2; }
     bool carries_charge() const { return role != ElementRole::layer; }
     /// Local functions: one per edge or end; a layer has one more, the mean vertical flux; a panel none.
-    int slots() const {
-        return role == ElementRole::panel ? 0 : corners() + (role == ElementRole::layer ? 1 : 0);
-    }
+    int slots() const { return role == ElementRole::panel ? 0 : corners() + (role == ElementRole::layer ? 1 : 0); }
 };
 
 /// Metal cells first (element index = cell index), then panels, then layers, in the order of Mesh::sheets.
@@ -35,9 +33,9 @@ std::vector<Element> make_elements(const Mesh& mesh);
 
 /// Where the parts of one sheet stand among the elements. A face covered by metal has that cell's index.
 struct SheetElements {
-    std::vector<int> top, bottom;           ///< by column: element that takes the charge of the face
-    std::vector<std::vector<int>> wall;     ///< by boundary edge of the sheet, by layer
-    std::vector<std::vector<int>> layer;    ///< by column, by layer (from the bottom)
+    std::vector<int> top, bottom;         ///< by column: element that takes the charge of the face
+    std::vector<std::vector<int>> wall;   ///< by boundary edge of the sheet, by layer
+    std::vector<std::vector<int>> layer;  ///< by column, by layer (from the bottom)
 };
 
 /// An edge of a sheet's plan: cells on either side (second -1 on the outline) with their local edge numbers.

@@ -10,7 +10,7 @@ namespace annulet {
 
 inline constexpr int lane_chunk = 64;  ///< source cells handled at a time
 
-inline constexpr int most_slots = 5;   ///< local functions of one element
+inline constexpr int most_slots = 5;  ///< local functions of one element
 
 /// One element copied out of a table.
 struct TestCell {

@@ -137,8 +137,10 @@ std::vector<LocalTable> local_tables(const std::vector<Element>& elements, bool 
             allocate(t);
             for (int lane = 0; lane < t.lanes; ++lane) {
                 const Element& element = elements[at(t.element[at(lane)])];
-                if (kind == CellKind::segment) fill_segment(t, lane, element);
-                else fill_surface(t, lane, planar_element(element), element.thickness_m, fine);
+                if (kind == CellKind::segment)
+                    fill_segment(t, lane, element);
+                else
+                    fill_surface(t, lane, planar_element(element), element.thickness_m, fine);
             }
             set_active(t);
             tables.push_back(std::move(t));

@@ -1,6 +1,7 @@
 #include <annulet/core/constants.hpp>
 #include <annulet/mom/operator.hpp>
 
+#include <stdexcept>
 #include <utility>
 
 #include "mom/element.hpp"
@@ -12,6 +13,23 @@ namespace annulet {
 
 using Complex = std::complex<double>;
 
+namespace {
+
+std::vector<double> wire_radii(const Mesh& mesh) {
+    std::vector<double> radii(mesh.conductors.size(), -1);
+    for (const Cell& cell : mesh.cells) {
+        if (cell.conductor < 0) continue;
+        double& known = radii[static_cast<std::size_t>(cell.conductor)];
+        const double radius = cell.kind == CellKind::segment ? cell.radius_m : 0;
+        if (known >= 0 && known != radius)
+            throw std::invalid_argument("foil and wire, or wires of different radii, share a conductor of the mesh");
+        known = radius;
+    }
+    return radii;
+}
+
+}  // namespace
+
 Operator::Operator(Mesh mesh, std::vector<Lumped> parts)
     : mesh_(std::move(mesh)), basis_(make_basis(mesh_)), parts_(std::move(parts)) {
     port_vectors_ = gap_vectors(mesh_, basis_, mesh_.ports);
@@ -19,6 +37,7 @@ Operator::Operator(Mesh mesh, std::vector<Lumped> parts)
     gram_ = gram_matrices(mesh_, basis_);
     for (const SheetMesh& sheet : mesh_.sheets)
         permittivities_.emplace_back(mesh_.laminates[static_cast<std::size_t>(sheet.laminate)]);
+    wire_radius_m_ = wire_radii(mesh_);
     tables_ = std::make_unique<PairTables>(make_pair_tables(mesh_, basis_));
 }
 
@@ -54,9 +73,13 @@ Eigen::MatrixXd Operator::static_scalar_potential() const {
 
 Eigen::SparseMatrix<Complex> Operator::surface_impedance_matrix(double frequency_hz) const {
     Eigen::SparseMatrix<Complex> sum(unknowns(), unknowns());
-    for (std::size_t i = 0; i < gram_.size(); ++i)
-        if (!mesh_.conductors[i].perfect())
-            sum += sheet_impedance(mesh_.conductors[i], frequency_hz) * gram_[i].cast<Complex>();
+    for (std::size_t i = 0; i < gram_.size(); ++i) {
+        const Conductor& conductor = mesh_.conductors[i];
+        if (conductor.perfect()) continue;
+        const Complex z = wire_radius_m_[i] > 0 ? wire_impedance_per_m(conductor, wire_radius_m_[i], frequency_hz)
+                                                : sheet_impedance(conductor, frequency_hz);
+        sum += z * gram_[i].cast<Complex>();
+    }
     return sum;
 }
 

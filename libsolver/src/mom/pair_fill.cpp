@@ -40,8 +40,8 @@ public:
                 const int n = basis_.slots.innerIndexPtr()[i];
                 const double scale = half * basis_.slots.valuePtr()[i];
                 for (int a = 0; a < test_slots; ++a)
-                    slots_(n, a) += scale * Complex(r.vector_re[a * most_slots + b][lane],
-                                                    r.vector_im[a * most_slots + b][lane]);
+                    slots_(n, a) +=
+                        scale * Complex(r.vector_re[a * most_slots + b][lane], r.vector_im[a * most_slots + b][lane]);
             }
         }
     }

@@ -26,9 +26,9 @@ struct SourceSet {
 
 /// Everything that does not depend on frequency.
 struct PairTables {
-    std::vector<SourceSet> sources;  ///< the elements; with a ground plane also their images
-    std::vector<int> table_of, lane_of;            ///< by element
-    int charges = 0;                               ///< elements that carry charge stand first
+    std::vector<SourceSet> sources;      ///< the elements; with a ground plane also their images
+    std::vector<int> table_of, lane_of;  ///< by element
+    int charges = 0;                     ///< elements that carry charge stand first
     /// Static part of near pairs tested on the row, 1/(4 pi R) included, not symmetrised:
     /// unknowns x unknowns (m) and charges x charges (1/m).
     Eigen::SparseMatrix<double> vector_statics, scalar_statics;

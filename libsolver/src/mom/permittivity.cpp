@@ -13,7 +13,9 @@ using Complex = std::complex<double>;
 constexpr double w1 = 2 * constants::pi * 1e4;
 constexpr double w2 = 2 * constants::pi * 1e12;
 
-Complex logarithm(Complex s) { return std::log((w2 + s) / (w1 + s)); }
+Complex logarithm(Complex s) {
+    return std::log((w2 + s) / (w1 + s));
+}
 
 }  // namespace
 

@@ -10,7 +10,9 @@ namespace annulet {
 
 namespace {
 
-std::size_t at(int i) { return static_cast<std::size_t>(i); }
+std::size_t at(int i) {
+    return static_cast<std::size_t>(i);
+}
 
 /// Where the unknowns of one sheet stand: one vertical flux per column, then lateral fluxes by edge and layer.
 struct SheetUnknowns {
@@ -33,8 +35,7 @@ std::vector<std::vector<Outflow>> outflows(const SheetMesh& sheet, const std::ve
     for (std::size_t e = 0; e < edges.size(); ++e)
         for (std::size_t side = 0; side < 2; ++side)
             if (edges[e].column[side] >= 0)
-                out[at(edges[e].column[side])][at(edges[e].slot[side])] = {static_cast<int>(e),
-                                                                           side == 0 ? 1.0 : -1.0};
+                out[at(edges[e].column[side])][at(edges[e].slot[side])] = {static_cast<int>(e), side == 0 ? 1.0 : -1.0};
     return out;
 }
 
@@ -89,7 +90,7 @@ Eigen::SparseMatrix<double> sheet_mass(const SheetMesh& sheet, const SheetUnknow
             const int index = where.layer[at(c)][at(l)], row = basis.first_slot[at(index)];
             const PlanarElement e = planar_element(elements[at(index)]);
             const double t = elements[at(index)].thickness_m;
-            const Eigen::Matrix4d g = planar_gram(e) / t;
+            const Eigen::Matrix4d g = rooftop_gram(e) / t;
             for (int a = 0; a < e.slots; ++a)
                 for (int b = 0; b < e.slots; ++b) lateral.emplace_back(row + a, row + b, g(a, b));
             append_vertical_mass(c * (u.layers + 1) + l, t, e.area_m2, vertical);
@@ -125,8 +126,8 @@ int append_sheets(const Mesh& mesh, int& rows, Basis& basis, BasisTriplets& trip
             append_column(unknowns[s], c, out[at(c)], where[s], basis, triplets);
         for (std::size_t e = 0; e < edges.size(); ++e)
             for (std::size_t l = 0; l < where[s].wall[e].size(); ++l)
-                triplets.divergence.emplace_back(
-                    where[s].wall[e][l], unknowns[s].lateral(static_cast<int>(e), static_cast<int>(l)), -1.0);
+                triplets.divergence.emplace_back(where[s].wall[e][l],
+                                                 unknowns[s].lateral(static_cast<int>(e), static_cast<int>(l)), -1.0);
         basis.unknowns = unknowns[s].end(static_cast<int>(edges.size()));
     }
     return charges;

@@ -1,4 +1,5 @@
-// Polarisation flux in the sheets: solenoidal in every brick or prism, so that bound charge sits on faces and walls only.
+// Polarisation flux in the sheets: solenoidal in every brick or prism, so that bound charge sits on faces and walls
+// only.
 #pragma once
 
 #include <annulet/mom/basis.hpp>

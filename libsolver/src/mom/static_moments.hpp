@@ -14,7 +14,10 @@ struct PairMoments {
     double scalar = 0;                              ///< of unit charge on either cell, 1/m
 };
 
-/// `touching`: the two share at least a corner.
+/// `touching`: close enough for the rule that resolves the logarithms at the edges.
 PairMoments static_pair(const PlanarElement& test, const PlanarElement& source, bool touching);
+
+/// Scalar moment alone, for panels of bound charge: 1/m.
+double static_scalar(const PlanarElement& test, const PlanarElement& source, bool touching);
 
 }  // namespace annulet

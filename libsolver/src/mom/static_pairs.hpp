@@ -6,6 +6,7 @@
 
 #include "mom/element.hpp"
 #include "mom/static_moments.hpp"
+#include "mom/wire_pairs.hpp"
 
 namespace annulet {
 
@@ -18,8 +19,12 @@ public:
     PairMoments moments(int test, int source, bool image) const;
 
 private:
+    bool is_wire(std::size_t e) const { return elements_[e].kind == CellKind::segment; }
+    PairMoments wire_moments(std::size_t test, std::size_t source, bool image) const;
+
     const std::vector<Element>& elements_;
     std::vector<PlanarElement> planar_, planar_image_;  ///< by element; empty entries for segments
+    std::vector<WireElement> wire_, wire_image_;        ///< by element; empty entries for flat ones
 };
 
 }  // namespace annulet

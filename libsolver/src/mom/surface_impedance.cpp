@@ -1,6 +1,7 @@
 #include "mom/surface_impedance.hpp"
 
 #include <annulet/core/constants.hpp>
+#include <annulet/numerics/special.hpp>
 
 #include <cmath>
 
@@ -38,6 +39,14 @@ Complex sheet_impedance(const Conductor& conductor, Complex s) {
     // Beyond 40 skin depths the foil is infinitely thick to rounding, and tanh would overflow nowhere near it.
     const Complex tanh = t > 0 && t * std::abs(gamma) < 56 ? std::tanh(0.5 * gamma * t) : Complex(1, 0);
     return complex_roughness_factor(conductor.roughness_rms_m, gamma) * gamma / (2 * sigma) / tanh;
+}
+
+Complex wire_impedance_per_m(const Conductor& conductor, double radius_m, double frequency_hz) {
+    if (conductor.perfect()) return 0;
+    const double sigma = conductor.conductivity_s_per_m, delta = skin_depth_m(sigma, frequency_hz);
+    const Complex gamma = Complex(1, 1) / delta;
+    const Complex z = gamma / (2 * constants::pi * radius_m * sigma) * bessel_i0_over_i1(gamma * radius_m);
+    return roughness_factor(conductor.roughness_rms_m, delta) * z;
 }
 
 Complex part_impedance(const Lumped& part, double frequency_hz) {

@@ -15,6 +15,10 @@ std::complex<double> sheet_impedance(const Conductor& conductor, double frequenc
 /// real on the positive real axis if the foil is smooth (the roughness factor is a function of |w|).
 std::complex<double> sheet_impedance(const Conductor& conductor, std::complex<double> s);
 
+/// Internal impedance per length (ohm/m) of a round wire: gamma / (2 pi a sigma) I0(gamma a) / I1(gamma a),
+/// gamma = (1 + j)/delta ([Ramo1994] ch. 4), times the roughness factor. Zero if perfect.
+std::complex<double> wire_impedance_per_m(const Conductor& conductor, double radius_m, double frequency_hz);
+
 /// Skin depth, m; conductivity finite.
 double skin_depth_m(double conductivity_s_per_m, double frequency_hz);
 

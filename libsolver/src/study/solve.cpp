@@ -54,13 +54,18 @@ MeshOptions mesh_options(const Model& model, double top_frequency_hz, const Solv
 
 std::vector<std::string> cautions_of(const Model& model) {
     std::vector<std::string> cautions;
-    if (!model.laminates.empty())
-        cautions.push_back(fmt::format(
-            "{} read and placed, but the laminate does not yet enter the solution: the metal is solved in air, "
-            "and on the real board every resonance lies lower",
-            model.laminates.size() == 1 ? "laminate '" + model.laminates.front().name + "' is"
-                                        : fmt::format("{} laminates are", model.laminates.size())));
+    for (const Laminate& laminate : model.laminates)
+        if (laminate.permittivity_z)
+            cautions.push_back(fmt::format(
+                "laminate '{}' is anisotropic: its effective isotropic permittivity is used, without the change of "
+                "thickness that goes with it",
+                laminate.name));
     return cautions;
+}
+
+void refuse_static_laminate(const Model& model) {
+    if (!model.laminates.empty() && model.accuracy.laminate == LaminateMethod::fixed_static)
+        refuse("laminate = \"static\" is not available yet", "use laminate = \"full\", or --in-air to leave the sheets out");
 }
 
 void read_network(SolvedModel& solved) {
@@ -127,6 +132,8 @@ SolvedModel solve_model(Model model, const SolveOptions& options, Progress* prog
     Timing timing;
     auto frequencies = sweep_frequencies(model.sweep, options.frequencies);
     if (model.ports.empty()) refuse("the model has no port, so there is nothing to sweep", "add a [[port]]");
+
+    refuse_static_laminate(model);
 
     checkpoint(progress, "mesh", 0, 0);
     auto mesh = make_mesh(model, mesh_options(model, frequencies.back(), options));

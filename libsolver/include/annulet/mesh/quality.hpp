@@ -21,6 +21,9 @@ struct MeshQuality {
 /// All figures are zero for an empty mesh.
 MeshQuality mesh_quality(const Mesh& mesh, double frequency_hz);
 
+/// Memory for a dense complex matrix of that order, its factors and work space.
+double matrix_bytes(double unknowns);
+
 /// Area of a surface cell (m^2), 0 for a segment.
 double cell_area_m2(const Mesh& mesh, const Cell& cell);
 

@@ -29,8 +29,9 @@ struct Basis {
     std::vector<Eigen::SparseMatrix<double>> polarisation_mass;
 };
 
-/// Joins cells at shared edges and wire ends at shared nodes: n cells at one edge give n-1 functions. In the sheets:
-/// lateral flux through every edge of every layer and one vertical flux per column, solenoidal in every brick.
+/// Joins cells at shared edges and wire ends at shared nodes: n cells at one edge give n-1 functions. Wire ends on the
+/// ground plane are connected to it: one function each, of a single slot. In the sheets: lateral flux through every
+/// edge of every layer and one vertical flux per column, solenoidal in every brick.
 Basis make_basis(const Mesh& mesh);
 
 /// Value of local function `slot` (0 ... corners-1) of a cell at point r inside it: A/m per ampere for surfaces

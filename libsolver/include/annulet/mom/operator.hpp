@@ -29,7 +29,8 @@ struct ExactTerm {
 /// G = exp(-jkR)/(4 pi R) [Harrington1968]; with a ground plane G acts on the images too.
 class Operator {
 public:
-    /// `parts` in the order of Mesh::lumped. Computes the static moments of near pairs and all tables.
+    /// `parts` in the order of Mesh::lumped. Computes the static moments of near pairs and all tables. A conductor
+    /// is either foil or wire of one radius: throws std::invalid_argument where cells of both kinds share one.
     explicit Operator(Mesh mesh, std::vector<Lumped> parts = {});
     ~Operator();
     Operator(Operator&&) noexcept;
@@ -55,7 +56,8 @@ public:
     Eigen::MatrixXd static_vector_potential() const;
     Eigen::MatrixXd static_scalar_potential() const;
 
-    /// Sum over conductors of the sheet (or internal) impedance times <f_m, f_n>: ohm, unknowns x unknowns.
+    /// Sum over conductors of the impedance of the sheet (ohm) or of the round wire (ohm/m) times <f_m, f_n>: ohm,
+    /// unknowns x unknowns.
     Eigen::SparseMatrix<std::complex<double>> surface_impedance_matrix(double frequency_hz) const;
 
     /// All that Z holds beside the two potentials: surface impedances, masses of the sheets, lumped parts. Independent of this object.
@@ -70,6 +72,7 @@ private:
     Eigen::MatrixXd port_vectors_, lumped_vectors_;
     std::vector<Eigen::SparseMatrix<double>> gram_;  ///< per conductor: <f_m, f_n> on its cells
     std::vector<Permittivity> permittivities_;       ///< per sheet
+    std::vector<double> wire_radius_m_;              ///< per conductor: of the round wire; 0: foil
     std::unique_ptr<PairTables> tables_;
 };
 
