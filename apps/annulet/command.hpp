@@ -24,9 +24,10 @@ struct Command {
 Command check_command();
 Command draw_command();
 Command sweep_command();
+Command prove_command();
 
 inline std::vector<Command> all_commands() {
-    return {check_command(), draw_command(), sweep_command()};
+    return {check_command(), draw_command(), sweep_command(), prove_command()};
 }
 
 }  // namespace annulet::app

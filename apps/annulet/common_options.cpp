@@ -43,11 +43,15 @@ std::string CommonOptions::output_path(const std::string& name) const {
 
 void add_common_options(CLI::App& parser, CommonOptions& options) {
     parser.add_option("MODEL", options.model, "Model file (TOML)")->required();
-    parser.add_option("--json", options.json, "Write the JSON result to FILE; - is standard output")->type_name("FILE");
-    parser.add_option("--out", options.out, "Directory for the files (default: the current one)")->type_name("DIR");
     parser.add_option("--set", options.set, "Override a parameter of the model (repeatable)")
         ->type_name("NAME=VALUE")
         ->allow_extra_args(false);
+    add_output_options(parser, options);
+}
+
+void add_output_options(CLI::App& parser, CommonOptions& options) {
+    parser.add_option("--json", options.json, "Write the JSON result to FILE; - is standard output")->type_name("FILE");
+    parser.add_option("--out", options.out, "Directory for the files (default: the current one)")->type_name("DIR");
     parser.add_option("--threads", options.threads, "Number of threads (default: all processors)")
         ->type_name("N")
         ->check(CLI::Range(1, most_threads));

@@ -30,7 +30,9 @@ struct CommonOptions {
     std::string output_path(const std::string& name) const;
 };
 
+/// All of them; of a command without a model only those about its output.
 void add_common_options(CLI::App& parser, CommonOptions& options);
+void add_output_options(CLI::App& parser, CommonOptions& options);
 
 /// A model read from its file with the `--set` parameters in force. Faults of the file are written to standard
 /// error with the lines they stand in, then `Reported` is thrown.

@@ -6,7 +6,7 @@
 #include <annulet/io/sweep_result.hpp>
 #include <annulet/io/text_file.hpp>
 #include <annulet/io/touchstone.hpp>
-#include <annulet/study/solve.hpp>
+#include <annulet/study/converge.hpp>
 
 #include <fmt/format.h>
 
@@ -19,6 +19,7 @@ struct SweepOptionsGiven {
     int points = 0;
     std::vector<std::string> at;
     bool every_point = false;
+    bool in_air = false;
 };
 
 void add_options(CLI::App& parser, SweepOptionsGiven& given) {
@@ -34,7 +35,8 @@ void add_options(CLI::App& parser, SweepOptionsGiven& given) {
         ->allow_extra_args(false)
         ->excludes("--from", "--to", "--points");
     parser.add_flag("--every-point", given.every_point,
-                    "Fill and factorise exactly at every point (at present every sweep does)");
+                    "Fill and factorise exactly at every point: slow, to check the sweep against");
+    parser.add_flag("--in-air", given.in_air, "Leave the laminates out, to see what the board does to the antenna");
 }
 
 FrequencyChoice frequencies(const SweepOptionsGiven& given) {
@@ -83,13 +85,19 @@ int run(const SweepOptionsGiven& given) {
     solve.frequencies = frequencies(given);
     solve.memory_limit_bytes = memory_at_hand_bytes();
     solve.threads = options.threads;
+    solve.every_point = given.every_point;
 
     auto loaded = load_model(options, "sweep");
+    const bool sheets_left_out = given.in_air && !loaded.model.laminates.empty();
+    if (given.in_air) loaded.model.laminates.clear();
     auto files = planned_files(options, loaded);
     check_writable(files, options.force);
 
     auto progress = begin_work(options);
-    const auto solved = solve_model(std::move(loaded.model), solve, progress.get());
+    auto solved = given.every_point ? solve_model(std::move(loaded.model), solve, progress.get())
+                                          : solve_with_error_bars(loaded.model, solve, {}, progress.get());
+    if (sheets_left_out)
+        solved.cautions.push_back("solved in air as asked: on the real board every resonance lies lower");
     const auto json = fill(files, options, solved, loaded.origin);
     checkpoint(progress.get(), "write", 0, 0);
     progress.reset();

@@ -20,6 +20,13 @@ R"(m.toml:1:15: error: not valid TOML: Error while parsing string: unescaped con
                   ^
 help: a text ends with its quote on the same line
 )"},
+{"StrangeTableName",
+R"([.]
+)",
+R"(m.toml:1:2: error: not valid TOML: Error while parsing key: expected bare key starting character or string delimiter, saw '.'
+    [.]
+     ^
+)"},
 {"DuplicateKey",
 R"(unit = "mm"
 unit = "m"

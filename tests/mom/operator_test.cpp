@@ -104,10 +104,11 @@ TEST(Operator, LumpedPartInPortGapAddsToImpedance) {
     EXPECT_LT(std::abs(loaded - bare - z), 1e-9 * std::abs(loaded));
 }
 
-// One plate half a metre over a ground plane, against two plates with opposite charge and current: images.
-TEST(Operator, GroundPlaneEqualsExplicitImage) {
+// A ring over a ground plane against two rings with opposite charge and current: images, far from it and so near that
+// the cells are near neighbours of their images.
+void expect_explicit_image(double height) {
     Mesh half = feed_ring(0.008, 24, edge_nodes(0.06));
-    for (Vec3& p : half.nodes) p.z() += 0.02;
+    for (Vec3& p : half.nodes) p.z() += height;
     Mesh both = half;
     const int nodes = static_cast<int>(half.nodes.size()), cells = static_cast<int>(half.cells.size());
     for (const Vec3& p : half.nodes) both.nodes.emplace_back(p.x(), p.y(), -p.z());
@@ -123,6 +124,10 @@ TEST(Operator, GroundPlaneEqualsExplicitImage) {
         const auto pair = solve_point(Operator(both), f).admittance_s(0, 0);  // both gaps driven: twice the current
         EXPECT_LT(std::abs(2.0 * ground - pair), 1e-9 * std::abs(pair)) << f;
     }
+}
+
+TEST(Operator, GroundPlaneEqualsExplicitImage) {
+    for (double height : {0.02, 0.003}) expect_explicit_image(height);
 }
 
 // Threads change the order of sums only: bound 100 eps cond(Z); 1e-12 with single-threaded BLAS.

@@ -38,6 +38,16 @@ TEST(SurfaceImpedance, Limits) {
     EXPECT_EQ(sheet_impedance(Conductor{}, 1e9), std::complex<double>(0));
 }
 
+// values.json `zint_wire`: [Ramo1994], ratio of Bessel functions.
+TEST(SurfaceImpedance, RoundWire) {
+    for (const auto& e : test::reference_values("zint_wire")) {
+        Conductor c;
+        c.conductivity_s_per_m = e.geometry("sigma");
+        const auto z = wire_impedance_per_m(c, e.geometry("radius_m"), e.geometry("f_Hz"));
+        EXPECT_LT(std::abs(z - e.complex()), 1e-4 * std::abs(e.complex())) << e.id();
+    }
+}
+
 // Hammerstad & Jensen 1980, values.json `roughness`.
 TEST(SurfaceImpedance, RoughnessFactor) {
     for (const auto& entry : test::reference_values("roughness")) {

@@ -17,6 +17,7 @@ CellCounts count_cells(const Mesh& mesh) {
         if (cell.kind == CellKind::triangle) ++counts.triangles;
         if (cell.kind == CellKind::segment) ++counts.segments;
     }
+    for (const auto& sheet : mesh.sheets) counts.laminate += static_cast<int>(sheet.columns.size()) * sheet.layers();
     return counts;
 }
 

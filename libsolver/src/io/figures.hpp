@@ -8,6 +8,7 @@ namespace annulet {
 
 struct CellCounts {
     int quadrilaterals = 0, triangles = 0, segments = 0;
+    int laminate = 0;  ///< bricks and prisms of the sheets
 };
 
 CellCounts count_cells(const Mesh& mesh);

@@ -35,7 +35,7 @@ Json mesh_json(const SolvedModel& solved) {
             {"quadrilaterals", counts.quadrilaterals},
             {"triangles", counts.triangles},
             {"segments", counts.segments},
-            {"laminate_cells", 0}};
+            {"laminate_cells", counts.laminate}};
 }
 
 Json port_json(const PortCurve& curve) {
@@ -73,9 +73,24 @@ Json resonances_json(const SolvedModel& solved) {
                         {"frequency_hz", found.frequency_hz},
                         {"resistance_ohm", found.resistance_ohm},
                         {"q", found.q},
+                        {"q_mode", estimate_or_null(found.q_mode)},
                         {"bandwidth_hz", found.bandwidth_hz},
                         {"uncertainty_hz", estimate_or_null(found.uncertainty_hz)}});
     return list;
+}
+
+Json quality_json(const SolvedModel& solved) {
+    Json balances = Json::array();
+    for (const PowerBalance& balance : solved.balances)
+        balances.push_back({{"frequency_hz", balance.frequency_hz},
+                            {"input_power_w", balance.input_w},
+                            {"radiated_power_w", balance.radiated_w},
+                            {"loss_w", balance.dissipated_w},
+                            {"power_balance", balance.ratio()}});
+    return {{"relative_residual", solved.worst.relative_residual},
+            {"reciprocal_condition", solved.worst.reciprocal_condition},
+            {"port_asymmetry", solved.worst.asymmetry},
+            {"power", std::move(balances)}};
 }
 
 Json goal_json(const SolvedModel& solved) {
@@ -120,6 +135,8 @@ std::string sweep_json(const SolvedModel& solved, const ResultOrigin& origin) {
     for (const auto& curve : solved.curves) {
         names.push_back(curve.port);
         ports[curve.port] = port_json(curve);
+        if (!solved.reflection_uncertainty.empty())
+            ports[curve.port]["reflection_uncertainty"] = solved.reflection_uncertainty[names.size() - 1];
     }
     result["ports"] = std::move(names);
     result["reference_ohm"] = solved.reference_ohm;
@@ -133,8 +150,8 @@ std::string sweep_json(const SolvedModel& solved, const ResultOrigin& origin) {
     result["goal"] = goal_json(solved);
     result["full_solves"] = solved.full_solves;
     result["reflection_error"] = solved.reflection_error;
-    result["quality"] = {{"relative_residual", solved.worst.relative_residual},
-                         {"reciprocal_condition", solved.worst.reciprocal_condition}};
+    result["solved_frequency_hz"] = solved.solved_hz;
+    result["quality"] = quality_json(solved);
     result["timing_s"] = timing_json(solved.timing);
     return json_text(result);
 }

@@ -52,6 +52,7 @@ std::string mesh_line(const SolvedModel& solved) {
     add(counts.quadrilaterals, "quadrilateral");
     add(counts.triangles, "triangle");
     add(counts.segments, "segment");
+    add(counts.laminate, "laminate cell");
     return entry("Mesh", count(solved.op.unknowns(), "unknown") + " on " + cells);
 }
 
@@ -59,8 +60,10 @@ std::string sweep_line(const SolvedModel& solved) {
     const auto& f = solved.frequency_hz;
     const std::string range = f.size() == 1 ? engineering(f.front(), "Hz", 6)
                                             : engineering(f.front(), "Hz", 6) + " to " + engineering(f.back(), "Hz", 6);
-    return entry("Sweep", fmt::format("{}, {}, {}", range, count(static_cast<int>(f.size()), "point"),
-                                      count(solved.full_solves, "full solve")));
+    const std::string error =
+        solved.reflection_error > 0 ? fmt::format(", |S11| within {:.0e}", solved.reflection_error) : std::string();
+    return entry("Sweep", fmt::format("{}, {}, {}{}", range, count(static_cast<int>(f.size()), "point"),
+                                      count(solved.full_solves, "full solve"), error));
 }
 
 std::string ratio(double vswr) {
@@ -71,13 +74,17 @@ std::string resonance_table(const SolvedModel& solved, const PortCurve& curve) {
     std::string table;
     for (const auto& found : solved.resonances) {
         if (found.port != curve.port) continue;
-        table += fmt::format("  {:<9} {:>12} {:>13} {:>10.3g}   {}\n", kind_name(found.kind),
-                             engineering(found.frequency_hz, "Hz", 5), engineering(found.resistance_ohm, "ohm"),
-                             found.q, found.bandwidth_hz > 0 ? engineering(found.bandwidth_hz, "Hz", 3) : "-");
+        table += fmt::format("  {:<9} {:>12} {:>9} {:>13} {:>10.3g}   {}\n", kind_name(found.kind),
+                             engineering(found.frequency_hz, "Hz", 5),
+                             found.uncertainty_hz > 0
+                                 ? fmt::format("{:.2g} %", 100 * found.uncertainty_hz / found.frequency_hz)
+                                 : std::string("-"),
+                             engineering(found.resistance_ohm, "ohm"), found.q,
+                             found.bandwidth_hz > 0 ? engineering(found.bandwidth_hz, "Hz", 3) : "-");
     }
     if (table.empty()) return "  no resonance in this range\n";
-    return fmt::format("  {:<9} {:>12} {:>13} {:>10}   below VSWR {:.3g}\n", "resonance", "frequency", "resistance",
-                       "Q", solved.model.goal.vswr) +
+    return fmt::format("  {:<9} {:>12} {:>9} {:>13} {:>10}   below VSWR {:.3g}\n", "resonance", "frequency", "+-",
+                       "resistance", "Q", solved.model.goal.vswr) +
            table;
 }
 
@@ -111,8 +118,12 @@ std::string port_block(const SolvedModel& solved, const PortCurve& curve) {
 }
 
 std::string quality_line(const SolvedModel& solved) {
-    return entry("Quality", fmt::format("worst relative residual {:.1e}, worst condition number {:.1e}",
-                                        solved.worst.relative_residual, 1 / solved.worst.reciprocal_condition));
+    std::string balance;
+    for (const PowerBalance& found : solved.balances)
+        balance += fmt::format("{}{:.4f}", balance.empty() ? ", power balance " : " ", found.ratio());
+    return entry("Quality",
+                 fmt::format("worst relative residual {:.1e}, worst condition number {:.1e}{}",
+                             solved.worst.relative_residual, 1 / solved.worst.reciprocal_condition, balance));
 }
 
 }  // namespace

@@ -16,8 +16,6 @@ bool same(const Vec2& a, const Vec2& b, double within_m) {
 }
 
 void check_unsupported(const Model& model, MeshFaults& faults) {
-    for (const Wire& wire : model.wires)
-        faults.add(wire.where, fmt::format("wire '{}' is not yet meshed", wire.name), "leave it out for now");
     for (const Via& via : model.vias)
         faults.add(via.where, fmt::format("via '{}' is not yet meshed", via.name), "leave it out for now");
 }
@@ -73,7 +71,7 @@ Layout lay_out(const Model& model, MeshFaults& faults) {
     layout.pieces = lay_out_metal(model, faults, layout.general);
     // A port on metal that is at fault would only repeat that fault.
     if (!faults.empty()) return layout;
-    if (layout.pieces.empty() &&
+    if (layout.pieces.empty() && model.wires.empty() &&
         std::find(layout.general.begin(), layout.general.end(), true) == layout.general.end()) {
         faults.add(model.metals.empty() ? Position{} : model.metals[0].where, "there is no metal to mesh");
         return layout;
@@ -88,9 +86,6 @@ Layout lay_out(const Model& model, MeshFaults& faults) {
                 layout.spans.push_back(*span);
         } else if (const auto* across = std::get_if<Across>(&place.placement)) {
             place_slit(model, layout, static_cast<int>(k), place, *across, faults);
-        } else {
-            faults.add(place.where, fmt::format("{} is on wire '{}': wires are not yet meshed", place.what,
-                                                std::get<OnWire>(place.placement).wire));
         }
     }
     place_sheet_edges(model, layout, faults);

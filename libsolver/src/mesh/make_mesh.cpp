@@ -7,6 +7,8 @@
 #include "mesh/assemble.hpp"
 #include "mesh/general_mesh.hpp"
 #include "mesh/sheets.hpp"
+#include "mesh/wire_contacts.hpp"
+#include "mesh/wire_plan.hpp"
 
 namespace annulet {
 
@@ -27,14 +29,17 @@ Mesh make_mesh(const Model& model, const MeshOptions& options) {
     check_options(options);
     MeshFaults faults;
     Layout layout = lay_out(model, faults);
+    const WirePlan wires = plan_wires(model, options, faults);
+    if (faults.empty()) check_wire_contacts(model, wires, layout.pieces, faults);
     faults.throw_if_any();
     const std::vector<GeneralPlane> planes = general_planes(model, layout.general, faults);
     const bool bare = std::all_of(planes.begin(), planes.end(), [](const GeneralPlane& p) { return p.metal.empty(); });
-    if (layout.pieces.empty() && bare && faults.empty()) faults.add(model.metals[0].where, "there is no metal to mesh");
+    if (layout.pieces.empty() && bare && model.wires.empty() && faults.empty())
+        faults.add(model.metals[0].where, "there is no metal to mesh");
     faults.throw_if_any();
     std::vector<CrossGrid> across = cross_grids(layout, options);
     const AlongGrid along = along_grid(layout, options);
-    const double unknowns = count_unknowns(layout, across, along, options.refine);
+    const double unknowns = count_unknowns(layout, across, along, options.refine) + wires.cells(options.refine);
     const double bytes = matrix_bytes(unknowns);
     if (unknowns > most_unknowns || (options.memory_limit_bytes > 0 && bytes > options.memory_limit_bytes)) {
         const std::string limit = options.memory_limit_bytes > 0 && bytes > options.memory_limit_bytes
@@ -48,6 +53,7 @@ Mesh make_mesh(const Model& model, const MeshOptions& options) {
     refine_grids(across, options);
     Mesh mesh = assemble(model, layout, across, along, options.refine);
     add_general(mesh, model, layout.general, planes, options);
+    add_wires(model, wires, options.refine, mesh);
     add_sheets(mesh, {model, layout, across, along, options}, faults);
     faults.throw_if_any();
     return mesh;

@@ -34,6 +34,8 @@ bool between(const Vec2& a, const Vec2& b, const Vec2& p) {
 }
 
 bool meet(const Vec2& a, const Vec2& b, const Vec2& c, const Vec2& d) {
+    if (std::min(a.y(), b.y()) > std::max(c.y(), d.y()) + tiny_m) return false;
+    if (std::min(c.y(), d.y()) > std::max(a.y(), b.y()) + tiny_m) return false;
     const int ac = side(a, b, c), ad = side(a, b, d), ca = side(c, d, a), cb = side(c, d, b);
     if (ac * ad < 0 && ca * cb < 0) return true;
     return (ac == 0 && between(a, b, c)) || (ad == 0 && between(a, b, d)) || (ca == 0 && between(c, d, a)) ||

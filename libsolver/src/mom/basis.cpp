@@ -3,10 +3,12 @@
 #include <Eigen/Geometry>
 
 #include <algorithm>
+#include <cmath>
 #include <map>
 #include <utility>
 
 #include "mom/element.hpp"
+#include "mom/sheet_basis.hpp"
 
 namespace annulet {
 
@@ -26,6 +28,15 @@ Key key_of(const Cell& cell, int slot) {
     return {std::min(a, b), std::max(a, b)};
 }
 
+constexpr double on_plane_m = 1e-9;
+
+bool grounded(const Mesh& mesh, const Key& key) {
+    return mesh.ground_plane_m && key.second < 0 &&
+           std::abs(mesh.nodes[at(key.first)].z() - *mesh.ground_plane_m) <= on_plane_m;
+}
+
+constexpr std::pair<int, int> ground{-1, -1};
+
 }  // namespace
 
 Basis make_basis(const Mesh& mesh) {
@@ -39,22 +50,33 @@ Basis make_basis(const Mesh& mesh) {
     }
     // In the order in which the second sharer appears: neighbours in the mesh stay neighbours in the matrix.
     std::vector<std::pair<std::pair<int, int>, std::pair<int, int>>> functions;
-    for (const auto& [key, cells] : sharers)
-        for (std::size_t i = 1; i < cells.size(); ++i) functions.emplace_back(cells[i], cells[0]);
+    for (const auto& [key, cells] : sharers) {
+        // Into the ground plane every wire end carries its current by itself: it flows on in the image.
+        const bool into_ground = grounded(mesh, key);
+        for (std::size_t i = into_ground ? 0 : 1; i < cells.size(); ++i)
+            functions.emplace_back(cells[i], into_ground ? ground : cells[0]);
+    }
     std::sort(functions.begin(), functions.end());
-    using Triplet = Eigen::Triplet<double>;
-    std::vector<Triplet> slots, divergence;
+    BasisTriplets triplets;
     for (const auto& [into, from] : functions) {
         const int n = basis.unknowns++;
-        slots.emplace_back(from.second, n, 1.0);
-        slots.emplace_back(into.second, n, -1.0);
-        divergence.emplace_back(from.first, n, 1.0);
-        divergence.emplace_back(into.first, n, -1.0);
+        if (from == ground) {
+            triplets.slots.emplace_back(into.second, n, 1.0);
+            triplets.divergence.emplace_back(into.first, n, 1.0);
+            continue;
+        }
+        triplets.slots.emplace_back(from.second, n, 1.0);
+        triplets.slots.emplace_back(into.second, n, -1.0);
+        triplets.divergence.emplace_back(from.first, n, 1.0);
+        triplets.divergence.emplace_back(into.first, n, -1.0);
     }
+    basis.metal_unknowns = basis.unknowns;
+    const int charges = append_sheets(mesh, rows, basis, triplets);
     basis.slots.resize(rows, basis.unknowns);
-    basis.slots.setFromTriplets(slots.begin(), slots.end());
-    basis.divergence.resize(static_cast<int>(mesh.cells.size()), basis.unknowns);
-    basis.divergence.setFromTriplets(divergence.begin(), divergence.end());
+    basis.slots.setFromTriplets(triplets.slots.begin(), triplets.slots.end());
+    basis.divergence.resize(charges, basis.unknowns);
+    basis.divergence.setFromTriplets(triplets.divergence.begin(), triplets.divergence.end());
+    basis.polarisation_mass = polarisation_mass(mesh, basis);
     return basis;
 }
 

@@ -78,21 +78,29 @@ PlanarElement PlanarElement::mirrored(double plane_z_m) const {
     const auto point = [&](Vec3& p) { p.z() = 2 * plane_z_m - p.z(); };
     for (auto& p : image.corner) point(p);
     point(image.apex);
-    image.normal.z() = -image.normal.z();
+    // The corners keep their order, so the normal that sees them counter-clockwise is minus the mirrored one.
+    image.normal = Vec3(-normal.x(), -normal.y(), normal.z());
     // f'(r) = M f(M r): with M r = D r + 2h z, D = diag(1, 1, -1): c' = D c + 2 h d z D = D c - 2 h d z
     for (auto& row : image.constant)
         for (auto& c : row) c = Vec3(c.x(), c.y(), -c.z() - 2 * plane_z_m * slope_per_m2);
     return image;
 }
 
-PlanarElement planar_element(const Mesh& mesh, const Cell& cell) {
+PlanarElement planar_element(const Element& element) {
     PlanarElement e;
-    e.slots = cell.corners();
-    for (int i = 0; i < 4; ++i) e.corner[at(i)] = mesh.nodes[at(cell.node[at(i < e.slots ? i : 0)])];
-    cell.kind == CellKind::quadrilateral ? fill_quadrilateral(e) : fill_triangle(e);
+    e.slots = element.corners();
+    e.corner = element.corner;
+    element.kind == CellKind::quadrilateral ? fill_quadrilateral(e) : fill_triangle(e);
     e.normal = (e.corner[1] - e.corner[0]).cross(e.corner[2] - e.corner[0]).normalized();
     e.slope_per_m2 = 1 / (2 * e.area_m2);
     return e;
+}
+
+PlanarElement planar_element(const Mesh& mesh, const Cell& cell) {
+    Element element;
+    element.kind = cell.kind;
+    for (int i = 0; i < 4; ++i) element.corner[at(i)] = mesh.nodes[at(cell.node[at(i < cell.corners() ? i : 0)])];
+    return planar_element(element);
 }
 
 MomentField moment_field(const PlanarElement& e) {

@@ -2,10 +2,10 @@
 // local function is affine, f = c + d r, with the same d on all triangles (constant charge density).
 #pragma once
 
-#include <annulet/mesh/mesh.hpp>
-
 #include <array>
 #include <vector>
+
+#include "mom/elements.hpp"
 
 namespace annulet {
 
@@ -33,6 +33,7 @@ struct PlanarElement {
 /// On a quadrilateral the local functions are the mean of the two built from the triangles of either diagonal,
 /// each with the diagonal eliminated so that both triangles carry the same charge density: div-conforming,
 /// reproduces constants and keeps mirror symmetries of the mesh.
+PlanarElement planar_element(const Element& element);
 PlanarElement planar_element(const Mesh& mesh, const Cell& cell);
 
 /// Affine field over the whole cell with the same zeroth and first moments as the local function; equal to it on

@@ -1,5 +1,7 @@
 #include "mom/gram.hpp"
 
+#include <annulet/numerics/quadrature.hpp>
+
 #include <array>
 
 #include "mom/element.hpp"
@@ -13,19 +15,6 @@ std::size_t at(int i) {
 }
 
 using LocalGram = Eigen::Matrix4d;
-
-/// Mid-edge rule on each triangle of the fan: exact for products of affine functions [Strang1973].
-LocalGram planar_gram(const PlanarElement& e) {
-    LocalGram g = LocalGram::Zero();
-    for (int k = 0; k < e.slots; ++k) {
-        const double w = e.triangle_area(k) / 3;
-        for (const Vec3& r : {Vec3((e.edge_start(k) + e.edge_end(k)) / 2), Vec3((e.edge_end(k) + e.apex) / 2),
-                              Vec3((e.apex + e.edge_start(k)) / 2)})
-            for (int a = 0; a < e.slots; ++a)
-                for (int b = 0; b < e.slots; ++b) g(a, b) += w * e.value(k, a, r).dot(e.value(k, b, r));
-    }
-    return g;
-}
 
 /// Hat functions on a segment: L/3 and, with opposite tangents outward, -L/6.
 LocalGram segment_gram(double length) {
@@ -54,6 +43,35 @@ std::array<Vec3, 4> local_integrals(const Mesh& mesh, const Cell& cell) {
 }
 
 }  // namespace
+
+/// Mid-edge rule on each triangle of the fan: exact for products of affine functions [Strang1973].
+Eigen::Matrix4d planar_gram(const PlanarElement& e) {
+    Eigen::Matrix4d g = Eigen::Matrix4d::Zero();
+    for (int k = 0; k < e.slots; ++k) {
+        const double w = e.triangle_area(k) / 3;
+        for (const Vec3& r : {Vec3((e.edge_start(k) + e.edge_end(k)) / 2), Vec3((e.edge_end(k) + e.apex) / 2),
+                              Vec3((e.apex + e.edge_start(k)) / 2)})
+            for (int a = 0; a < e.slots; ++a)
+                for (int b = 0; b < e.slots; ++b) g(a, b) += w * e.value(k, a, r).dot(e.value(k, b, r));
+    }
+    return g;
+}
+
+Eigen::Matrix4d rooftop_gram(const PlanarElement& e) {
+    if (e.slots == 3) return planar_gram(e);
+    const auto& p = e.corner;
+    const SquareRule rule = gauss_square(3, 3);
+    Eigen::Matrix4d g = Eigen::Matrix4d::Zero();
+    for (Eigen::Index i = 0; i < rule.weights.size(); ++i) {
+        const double u = rule.points(i, 0), v = rule.points(i, 1);
+        const Vec3 r_u = (1 - v) * (p[1] - p[0]) + v * (p[2] - p[3]);
+        const Vec3 r_v = (1 - u) * (p[3] - p[0]) + u * (p[2] - p[1]);
+        Eigen::Matrix<double, 3, 4> f;  // times J
+        f << -(1 - v) * r_v, u * r_u, v * r_v, -(1 - u) * r_u;
+        g += rule.weights[i] / r_u.cross(r_v).norm() * f.transpose() * f;
+    }
+    return g;
+}
 
 std::vector<Eigen::SparseMatrix<double>> gram_matrices(const Mesh& mesh, const Basis& basis) {
     using Triplet = Eigen::Triplet<double>;

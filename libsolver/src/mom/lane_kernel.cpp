@@ -98,13 +98,18 @@ struct Contracted {
     alignas(64) double im[3][lane_chunk];
 };
 
-void add_slot(const TestCell& test, int point, int b, const Contracted& h, bool level, int count, LaneResult& out) {
+void add_slot(const TestCell& test, int point, int b, const std::array<bool, 3>& active, const Contracted& h, int count,
+              LaneResult& out) {
     for (int a = 0; a < test.slots; ++a) {
-        const auto& f = test.field[static_cast<std::size_t>(a)][static_cast<std::size_t>(point)];
-        double* __restrict re = out.vector_re[a * 4 + b];
-        double* __restrict im = out.vector_im[a * 4 + b];
-        add_level(f[0], f[1], h.re[0], h.im[0], h.re[1], h.im[1], count, re, im);
-        if (!level) add_scaled(f[2], h.re[2], h.im[2], count, re, im);
+        const auto slot = static_cast<std::size_t>(a);
+        const auto& f = test.field[slot][static_cast<std::size_t>(point)];
+        const auto& on = test.active[slot];
+        double* re = out.vector_re[a * most_slots + b];
+        double* im = out.vector_im[a * most_slots + b];
+        const bool plane = active[0] && active[1] && (on[0] || on[1]);
+        if (plane) add_level(f[0], f[1], h.re[0], h.im[0], h.re[1], h.im[1], count, re, im);
+        for (std::size_t axis = plane ? 2 : 0; axis < 3; ++axis)
+            if (active[axis] && on[axis]) add_scaled(f[axis], h.re[axis], h.im[axis], count, re, im);
     }
 }
 
@@ -122,7 +127,8 @@ TestCell test_cell(const LocalTable& table, int lane) {
     TestCell t;
     t.points = table.points;
     t.slots = table.slots;
-    t.level = table.level;
+    t.carries_charge = table.carries_charge();
+    t.active = table.active;
     t.radius2 = table.radius2[static_cast<std::size_t>(lane)];
     for (int j = 0; j < table.points; ++j) {
         const auto p = static_cast<std::size_t>(j);
@@ -144,7 +150,7 @@ void interact(const TestCell& test, const LocalTable& source, int first, int cou
     Contracted h;
     alignas(64) double charge_re[lane_chunk], charge_im[lane_chunk];
     const auto green = part == KernelPart::whole ? green_whole : green_remainder;
-    const bool level = test.level || source.level;
+    const bool charges = test.carries_charge && source.carries_charge();
     const auto stride = static_cast<std::size_t>(source.lanes);
     for (int i = 0; i < test.points; ++i) {
         const auto p = static_cast<std::size_t>(i);
@@ -152,13 +158,18 @@ void interact(const TestCell& test, const LocalTable& source, int first, int cou
             green(&source.position[source.index(3 * j, first)], &source.position[source.index(3 * j + 1, first)],
                   &source.position[source.index(3 * j + 2, first)], &source.radius2[static_cast<std::size_t>(first)],
                   test.position[p].data(), test.radius2, k, count, g.re[j], g.im[j]);
-        contract(&source.charge[source.index(0, first)], stride, source.points, g, count, charge_re, charge_im);
-        add_scaled(source.sign * test.charge[p], charge_re, charge_im, count, result.scalar_re, result.scalar_im);
+        if (charges) {
+            contract(&source.charge[source.index(0, first)], stride, source.points, g, count, charge_re, charge_im);
+            add_scaled(source.sign * test.charge[p], charge_re, charge_im, count, result.scalar_re, result.scalar_im);
+        }
+        if (test.slots == 0) continue;
         for (int b = 0; b < source.slots; ++b) {
-            for (int axis = 0; axis < (level ? 2 : 3); ++axis)
-                contract(&source.field[source.index(b * source.points * 3 + axis, first)], 3 * stride, source.points, g,
-                         count, h.re[axis], h.im[axis]);
-            add_slot(test, i, b, h, level, count, result);
+            const auto& active = source.active[static_cast<std::size_t>(b)];
+            for (int axis = 0; axis < 3; ++axis)
+                if (active[static_cast<std::size_t>(axis)])
+                    contract(&source.field[source.index(b * source.points * 3 + axis, first)], 3 * stride,
+                             source.points, g, count, h.re[axis], h.im[axis]);
+            add_slot(test, i, b, active, h, count, result);
         }
     }
     if (source.sign < 0)

@@ -10,14 +10,17 @@ namespace annulet {
 
 inline constexpr int lane_chunk = 64;  ///< source cells handled at a time
 
-/// One cell copied out of a table.
+inline constexpr int most_slots = 5;  ///< local functions of one element
+
+/// One element copied out of a table.
 struct TestCell {
     int points = 0;
     int slots = 0;
-    bool level = true;
+    bool carries_charge = true;
+    std::array<std::array<bool, 3>, 5> active{};
     double radius2 = 0;
     std::array<std::array<double, 3>, 9> position{};
-    std::array<std::array<std::array<double, 3>, 9>, 4> field{};
+    std::array<std::array<std::array<double, 3>, 9>, 5> field{};
     std::array<double, 9> charge{};
 };
 
@@ -25,8 +28,8 @@ TestCell test_cell(const LocalTable& table, int lane);
 
 /// Local matrices of the test cell with up to `lane_chunk` source cells.
 struct LaneResult {
-    alignas(64) double vector_re[16][lane_chunk];  ///< [test slot * 4 + source slot], m
-    alignas(64) double vector_im[16][lane_chunk];
+    alignas(64) double vector_re[most_slots * most_slots][lane_chunk];  ///< [test slot * most_slots + source slot], m
+    alignas(64) double vector_im[most_slots * most_slots][lane_chunk];
     alignas(64) double scalar_re[lane_chunk];  ///< 1/m
     alignas(64) double scalar_im[lane_chunk];
 };

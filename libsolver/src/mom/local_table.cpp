@@ -43,22 +43,24 @@ std::vector<SurfacePoint> surface_points(const PlanarElement& e, bool fine) {
     return out;
 }
 
-void fill_surface(LocalTable& table, int lane, const PlanarElement& e, bool fine) {
+void fill_surface(LocalTable& table, int lane, const PlanarElement& e, double thickness_m, bool fine) {
     const auto points = surface_points(e, fine);
     const MomentField f = moment_field(e);
+    const int lateral = std::min(table.slots, e.slots);
     for (int j = 0; j < table.points; ++j) {
         const SurfacePoint& p = points[at(j)];
         table.charge_at(j, lane) = p.weight_m2 / e.area_m2;
         for (int axis = 0; axis < 3; ++axis) table.position_at(j, axis, lane) = p.position[axis];
-        for (int slot = 0; slot < table.slots; ++slot) {
+        if (table.slots > e.slots) table.field_at(e.slots, j, 2, lane) = table.charge_at(j, lane) * thickness_m;
+        for (int slot = 0; slot < lateral; ++slot) {
             const Vec3 value = f.mean[at(slot)] + f.gradient[at(slot)] * (p.position - f.centroid);
             for (int axis = 0; axis < 3; ++axis) table.field_at(slot, j, axis, lane) = p.weight_m2 * value[axis];
         }
     }
 }
 
-void fill_segment(LocalTable& table, int lane, const Mesh& mesh, const Cell& cell) {
-    const Vec3 a = mesh.nodes[at(cell.node[0])], b = mesh.nodes[at(cell.node[1])];
+void fill_segment(LocalTable& table, int lane, const Element& element) {
+    const Vec3 &a = element.corner[0], &b = element.corner[1];
     const double length = (b - a).norm();
     const Vec3 tangent = (b - a) / length;
     const LineRule rule = gauss_legendre(table.points, 0, 1);
@@ -71,7 +73,7 @@ void fill_segment(LocalTable& table, int lane, const Mesh& mesh, const Cell& cel
             table.field_at(1, j, axis, lane) = w * length * u * tangent[axis];
         }
     }
-    table.radius2[at(lane)] = cell.radius_m * cell.radius_m;
+    table.radius2[at(lane)] = element.radius_m * element.radius_m;
 }
 
 int points_per_cell(CellKind kind, bool fine) {
@@ -87,23 +89,25 @@ int points_per_cell(CellKind kind, bool fine) {
 }
 
 void allocate(LocalTable& t) {
-    t.lanes = static_cast<int>(t.cell.size());
-    t.position.assign(at(t.points * 3) * t.cell.size(), 0);
-    t.field.assign(at(t.slots * t.points * 3) * t.cell.size(), 0);
-    t.charge.assign(at(t.points) * t.cell.size(), 0);
-    t.radius2.assign(t.cell.size(), 0);
+    t.lanes = static_cast<int>(t.element.size());
+    t.position.assign(at(t.points * 3) * t.element.size(), 0);
+    t.field.assign(at(t.slots * t.points * 3) * t.element.size(), 0);
+    t.charge.assign(at(t.points) * t.element.size(), 0);
+    t.radius2.assign(t.element.size(), 0);
 }
 
-/// Fields of level cells carry a z component of rounding size only.
-void set_level(LocalTable& t) {
-    double largest = 0, vertical = 0;
-    for (int outer = 0; outer < t.slots * t.points * 3; ++outer)
-        for (int lane = 0; lane < t.lanes; ++lane) {
-            const double f = std::abs(t.field[t.index(outer, lane)]);
-            largest = std::max(largest, f);
-            if (outer % 3 == 2) vertical = std::max(vertical, f);
-        }
-    t.level = vertical <= 1e-12 * largest;
+/// A component counts as zero where it is rounding only.
+void set_active(LocalTable& t) {
+    for (int slot = 0; slot < t.slots; ++slot) {
+        std::array<double, 3> largest{};
+        for (int row = 0; row < t.points * 3; ++row)
+            for (int lane = 0; lane < t.lanes; ++lane) {
+                double& most = largest[at(row % 3)];
+                most = std::max(most, std::abs(t.field[t.index(slot * t.points * 3 + row, lane)]));
+            }
+        const double scale = *std::max_element(largest.begin(), largest.end());
+        for (std::size_t axis = 0; axis < 3; ++axis) t.active[at(slot)][axis] = largest[axis] > 1e-12 * scale;
+    }
 }
 
 /// Rows of `from` at the chosen lanes.
@@ -118,27 +122,29 @@ std::vector<double> pick(const LocalTable& t, const std::vector<double>& from, c
 
 }  // namespace
 
-std::vector<LocalTable> local_tables(const Mesh& mesh, bool fine) {
+std::vector<LocalTable> local_tables(const std::vector<Element>& elements, bool fine) {
     std::vector<LocalTable> tables;
-    for (const CellKind kind : {CellKind::quadrilateral, CellKind::triangle, CellKind::segment}) {
-        LocalTable t;
-        t.kind = kind;
-        for (std::size_t c = 0; c < mesh.cells.size(); ++c)
-            if (mesh.cells[c].kind == kind) t.cell.push_back(static_cast<int>(c));
-        if (t.cell.empty()) continue;
-        t.points = points_per_cell(kind, fine);
-        t.slots = mesh.cells[at(t.cell.front())].corners();
-        allocate(t);
-        for (int lane = 0; lane < t.lanes; ++lane) {
-            const Cell& cell = mesh.cells[at(t.cell[at(lane)])];
-            if (kind == CellKind::segment)
-                fill_segment(t, lane, mesh, cell);
-            else
-                fill_surface(t, lane, planar_element(mesh, cell), fine);
+    for (const ElementRole role : {ElementRole::metal, ElementRole::panel, ElementRole::layer})
+        for (const CellKind kind : {CellKind::quadrilateral, CellKind::triangle, CellKind::segment}) {
+            LocalTable t;
+            t.role = role;
+            t.kind = kind;
+            for (std::size_t e = 0; e < elements.size(); ++e)
+                if (elements[e].role == role && elements[e].kind == kind) t.element.push_back(static_cast<int>(e));
+            if (t.element.empty()) continue;
+            t.points = points_per_cell(kind, fine);
+            t.slots = elements[at(t.element.front())].slots();
+            allocate(t);
+            for (int lane = 0; lane < t.lanes; ++lane) {
+                const Element& element = elements[at(t.element[at(lane)])];
+                if (kind == CellKind::segment)
+                    fill_segment(t, lane, element);
+                else
+                    fill_surface(t, lane, planar_element(element), element.thickness_m, fine);
+            }
+            set_active(t);
+            tables.push_back(std::move(t));
         }
-        set_level(t);
-        tables.push_back(std::move(t));
-    }
     return tables;
 }
 
@@ -156,12 +162,13 @@ LocalTable mirror_image(const LocalTable& table, double plane_m) {
 
 LocalTable gather(const LocalTable& table, const std::vector<int>& lanes) {
     LocalTable out;
+    out.role = table.role;
     out.kind = table.kind;
     out.points = table.points;
     out.slots = table.slots;
     out.sign = table.sign;
-    out.level = table.level;
-    for (int lane : lanes) out.cell.push_back(table.cell[at(lane)]);
+    out.active = table.active;
+    for (int lane : lanes) out.element.push_back(table.element[at(lane)]);
     out.position = pick(table, table.position, lanes);
     out.field = pick(table, table.field, lanes);
     out.charge = pick(table, table.charge, lanes);

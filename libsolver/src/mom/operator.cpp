@@ -1,6 +1,7 @@
 #include <annulet/core/constants.hpp>
 #include <annulet/mom/operator.hpp>
 
+#include <stdexcept>
 #include <utility>
 
 #include "mom/element.hpp"
@@ -12,11 +13,31 @@ namespace annulet {
 
 using Complex = std::complex<double>;
 
+namespace {
+
+std::vector<double> wire_radii(const Mesh& mesh) {
+    std::vector<double> radii(mesh.conductors.size(), -1);
+    for (const Cell& cell : mesh.cells) {
+        if (cell.conductor < 0) continue;
+        double& known = radii[static_cast<std::size_t>(cell.conductor)];
+        const double radius = cell.kind == CellKind::segment ? cell.radius_m : 0;
+        if (known >= 0 && known != radius)
+            throw std::invalid_argument("foil and wire, or wires of different radii, share a conductor of the mesh");
+        known = radius;
+    }
+    return radii;
+}
+
+}  // namespace
+
 Operator::Operator(Mesh mesh, std::vector<Lumped> parts)
     : mesh_(std::move(mesh)), basis_(make_basis(mesh_)), parts_(std::move(parts)) {
     port_vectors_ = gap_vectors(mesh_, basis_, mesh_.ports);
     lumped_vectors_ = gap_vectors(mesh_, basis_, mesh_.lumped);
     gram_ = gram_matrices(mesh_, basis_);
+    for (const SheetMesh& sheet : mesh_.sheets)
+        permittivities_.emplace_back(mesh_.laminates[static_cast<std::size_t>(sheet.laminate)]);
+    wire_radius_m_ = wire_radii(mesh_);
     tables_ = std::make_unique<PairTables>(make_pair_tables(mesh_, basis_));
 }
 
@@ -32,6 +53,8 @@ Eigen::MatrixXcd Operator::impedance_matrix(double frequency_hz, bool symmetrise
     z *= 1.0 / Complex(0, w * constants::eps0_f_per_m);
     z += Complex(0, w * constants::mu0_h_per_m) * g.vector;
     z += surface_impedance_matrix(frequency_hz);
+    for (std::size_t i = 0; i < mesh_.sheets.size(); ++i)
+        z += polarisation_factor(permittivities_[i], Complex(0, w)) * basis_.polarisation_mass[i].cast<Complex>();
     for (std::size_t i = 0; i < parts_.size(); ++i) {
         const Eigen::VectorXd v = lumped_vectors_.col(static_cast<int>(i));
         z += part_impedance(parts_[i], frequency_hz) * (v * v.transpose()).cast<Complex>();
@@ -50,10 +73,31 @@ Eigen::MatrixXd Operator::static_scalar_potential() const {
 
 Eigen::SparseMatrix<Complex> Operator::surface_impedance_matrix(double frequency_hz) const {
     Eigen::SparseMatrix<Complex> sum(unknowns(), unknowns());
+    for (std::size_t i = 0; i < gram_.size(); ++i) {
+        const Conductor& conductor = mesh_.conductors[i];
+        if (conductor.perfect()) continue;
+        const Complex z = wire_radius_m_[i] > 0 ? wire_impedance_per_m(conductor, wire_radius_m_[i], frequency_hz)
+                                                : sheet_impedance(conductor, frequency_hz);
+        sum += z * gram_[i].cast<Complex>();
+    }
+    return sum;
+}
+
+std::vector<ExactTerm> Operator::exact_terms() const {
+    std::vector<ExactTerm> terms;
     for (std::size_t i = 0; i < gram_.size(); ++i)
         if (!mesh_.conductors[i].perfect())
-            sum += sheet_impedance(mesh_.conductors[i], frequency_hz) * gram_[i].cast<Complex>();
-    return sum;
+            terms.push_back(
+                {gram_[i], [conductor = mesh_.conductors[i]](Complex s) { return sheet_impedance(conductor, s); }});
+    for (std::size_t i = 0; i < permittivities_.size(); ++i)
+        terms.push_back({basis_.polarisation_mass[i], [permittivity = permittivities_[i]](Complex s) {
+                             return polarisation_factor(permittivity, s);
+                         }});
+    for (std::size_t i = 0; i < parts_.size(); ++i) {
+        const Eigen::SparseMatrix<double> v = Eigen::MatrixXd(lumped_vectors_.col(static_cast<int>(i))).sparseView();
+        terms.push_back({v * v.transpose(), [part = parts_[i]](Complex s) { return part_impedance(part, s); }});
+    }
+    return terms;
 }
 
 }  // namespace annulet

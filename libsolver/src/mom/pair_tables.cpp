@@ -17,36 +17,37 @@ struct Extent {
     double diameter = 0;
 };
 
-std::vector<Extent> extents(const Mesh& mesh) {
+std::vector<Extent> extents(const std::vector<Element>& elements) {
     std::vector<Extent> out;
-    for (const Cell& cell : mesh.cells) {
+    for (const Element& element : elements) {
         Extent e;
-        for (int i = 0; i < cell.corners(); ++i) {
-            const Vec3& p = mesh.nodes[at(cell.node[at(i)])];
-            e.centre += p / cell.corners();
-            for (int j = 0; j < i; ++j)
-                e.diameter = std::max(e.diameter, (p - mesh.nodes[at(cell.node[at(j)])]).norm());
+        for (int i = 0; i < element.corners(); ++i) {
+            const Vec3& p = element.corner[at(i)];
+            e.centre += p / element.corners();
+            for (int j = 0; j < i; ++j) e.diameter = std::max(e.diameter, (p - element.corner[at(j)]).norm());
         }
-        e.diameter = std::max(e.diameter, 2 * cell.radius_m);
+        // The reduced kernel of distant segments is off by (a/d)^4: 3e-4 where the near zone of short cells ends.
+        e.diameter = std::max(e.diameter, 4 * element.radius_m);
         out.push_back(e);
     }
     return out;
 }
 
-/// Table order: by kind of cell, then by number.
+/// Table order: by role and kind, then by number.
 bool before(const PairTables& t, int p, int q) {
-    return std::pair(t.table_of_cell[at(p)], t.lane_of_cell[at(p)]) <
-           std::pair(t.table_of_cell[at(q)], t.lane_of_cell[at(q)]);
+    return std::pair(t.table_of[at(p)], t.lane_of[at(p)]) < std::pair(t.table_of[at(q)], t.lane_of[at(q)]);
 }
 
 std::vector<Neighbours> find_neighbours(const PairTables& tables, const std::vector<Extent>& test,
                                         const std::vector<Extent>& source) {
-    const int cells = static_cast<int>(test.size());
+    const int elements = static_cast<int>(test.size());
+    const auto& kinds = tables.sources[0].coarse;
+    const auto table = [&](int e) -> const LocalTable& { return kinds[at(tables.table_of[at(e)])]; };
     std::vector<Neighbours> out(test.size());
 #pragma omp parallel for schedule(dynamic, 16)
-    for (int p = 0; p < cells; ++p)
-        for (int q = 0; q < cells; ++q) {
-            if (before(tables, q, p)) continue;
+    for (int p = 0; p < elements; ++p)
+        for (int q = 0; q < elements; ++q) {
+            if (before(tables, q, p) || !interacting(table(p), table(q))) continue;
             const double apart = (test[at(p)].centre - source[at(q)].centre).norm();
             const double size = std::max(test[at(p)].diameter, source[at(q)].diameter);
             if (apart < 2 * size)
@@ -60,9 +61,9 @@ std::vector<Neighbours> find_neighbours(const PairTables& tables, const std::vec
 using Triplets = std::vector<Eigen::Triplet<double>>;
 
 void append_vector(const Basis& basis, int p, int q, const PairMoments& m, double sign, Triplets& out) {
-    using Row = Eigen::SparseMatrix<double, Eigen::RowMajor>::InnerIterator;
-    for (std::size_t a = 0; a < 4; ++a)
-        for (std::size_t b = 0; b < 4; ++b) {
+    using Row = Basis::Matrix::InnerIterator;
+    for (std::size_t a = 0; a < 5; ++a)
+        for (std::size_t b = 0; b < 5; ++b) {
             if (m.vector[a][b] == 0) continue;
             for (Row i(basis.slots, basis.first_slot[at(p)] + static_cast<int>(a)); i; ++i)
                 for (Row j(basis.slots, basis.first_slot[at(q)] + static_cast<int>(b)); j; ++j)
@@ -72,54 +73,65 @@ void append_vector(const Basis& basis, int p, int q, const PairMoments& m, doubl
 }
 
 /// Both testing orders of every near pair.
-void append_statics(const StaticPairs& pairs, const Basis& basis, const SourceSet& set, bool image, int p,
+void append_statics(const StaticPairs& pairs, const Basis& basis, const SourceSet& set, bool image, int p, int charges,
                     Triplets& vector, Triplets& scalar) {
     const double sign = image ? -1 : 1;
     for (const int q : set.neighbours[at(p)].near) {
         const auto add = [&](int test, int source) {
             const PairMoments m = pairs.moments(test, source, image);
             append_vector(basis, test, source, m, sign, vector);
-            scalar.emplace_back(test, source, sign * m.scalar);
+            if (test < charges && source < charges) scalar.emplace_back(test, source, sign * m.scalar);
         };
         add(p, q);
         if (p != q) add(q, p);
     }
 }
 
-void fill_statics(PairTables& tables, const Mesh& mesh, const Basis& basis) {
-    const StaticPairs pairs(mesh);
-    const int cells = static_cast<int>(mesh.cells.size());
-    std::vector<Triplets> vector(mesh.cells.size()), scalar(mesh.cells.size());
-#pragma omp parallel for schedule(dynamic, 4)
-    for (int p = 0; p < cells; ++p)
-        for (std::size_t s = 0; s < tables.sources.size(); ++s)
-            append_statics(pairs, basis, tables.sources[s], s == 1, p, vector[at(p)], scalar[at(p)]);
-    // Joined in the order of the cells, so that sums do not depend on the number of threads.
-    Triplets all_vector, all_scalar;
-    for (int p = 0; p < cells; ++p) {
-        all_vector.insert(all_vector.end(), vector[at(p)].begin(), vector[at(p)].end());
-        all_scalar.insert(all_scalar.end(), scalar[at(p)].begin(), scalar[at(p)].end());
+/// Sums of triplets without ever holding all of them twice: sorted and merged block by block.
+Eigen::SparseMatrix<double> gather_triplets(std::vector<Triplets>& parts, int size) {
+    Eigen::SparseMatrix<double> sum(size, size);
+    constexpr std::size_t block = 256;  // joined in the order of the elements: independent of the number of threads
+    for (std::size_t first = 0; first < parts.size(); first += block) {
+        Triplets some;
+        for (std::size_t i = first; i < std::min(first + block, parts.size()); ++i) {
+            some.insert(some.end(), parts[i].begin(), parts[i].end());
+            Triplets().swap(parts[i]);
+        }
+        Eigen::SparseMatrix<double> part(size, size);
+        part.setFromTriplets(some.begin(), some.end());
+        sum += part;
     }
-    tables.vector_statics.resize(basis.unknowns, basis.unknowns);
-    tables.vector_statics.setFromTriplets(all_vector.begin(), all_vector.end());
-    tables.scalar_statics.resize(cells, cells);
-    tables.scalar_statics.setFromTriplets(all_scalar.begin(), all_scalar.end());
+    return sum;
+}
+
+void fill_statics(PairTables& tables, const Mesh& mesh, const std::vector<Element>& elements, const Basis& basis) {
+    const StaticPairs pairs(elements, mesh.ground_plane_m);
+    const int count = static_cast<int>(elements.size());
+    std::vector<Triplets> vector(elements.size()), scalar(elements.size());
+#pragma omp parallel for schedule(dynamic, 4)
+    for (int p = 0; p < count; ++p)
+        for (std::size_t s = 0; s < tables.sources.size(); ++s)
+            append_statics(pairs, basis, tables.sources[s], s == 1, p, tables.charges, vector[at(p)], scalar[at(p)]);
+    tables.vector_statics = gather_triplets(vector, basis.unknowns);
+    tables.scalar_statics = gather_triplets(scalar, tables.charges);
 }
 
 }  // namespace
 
 PairTables make_pair_tables(const Mesh& mesh, const Basis& basis) {
+    const auto elements = make_elements(mesh);
     PairTables tables;
-    tables.sources.push_back({local_tables(mesh, false), local_tables(mesh, true), {}});
-    tables.table_of_cell.resize(mesh.cells.size());
-    tables.lane_of_cell.resize(mesh.cells.size());
+    tables.sources.push_back({local_tables(elements, false), local_tables(elements, true), {}});
+    tables.charges = static_cast<int>(basis.divergence.rows());
+    tables.table_of.resize(elements.size());
+    tables.lane_of.resize(elements.size());
     const auto& coarse = tables.sources[0].coarse;
     for (std::size_t t = 0; t < coarse.size(); ++t)
         for (int lane = 0; lane < coarse[t].lanes; ++lane) {
-            tables.table_of_cell[at(coarse[t].cell[at(lane)])] = static_cast<int>(t);
-            tables.lane_of_cell[at(coarse[t].cell[at(lane)])] = lane;
+            tables.table_of[at(coarse[t].element[at(lane)])] = static_cast<int>(t);
+            tables.lane_of[at(coarse[t].element[at(lane)])] = lane;
         }
-    const auto extent = extents(mesh);
+    const auto extent = extents(elements);
     tables.sources[0].neighbours = find_neighbours(tables, extent, extent);
     if (mesh.ground_plane_m) {
         const double plane = *mesh.ground_plane_m;
@@ -131,7 +143,7 @@ PairTables make_pair_tables(const Mesh& mesh, const Basis& basis) {
         image.neighbours = find_neighbours(tables, extent, mirrored);
         tables.sources.push_back(std::move(image));
     }
-    fill_statics(tables, mesh, basis);
+    fill_statics(tables, mesh, elements, basis);
     return tables;
 }
 

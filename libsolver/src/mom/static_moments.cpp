@@ -33,13 +33,24 @@ std::array<FanMoments, 4> accumulate(const std::vector<OuterPoint>& points, cons
     return moments;
 }
 
-constexpr int touching_points = 8;
-constexpr int bisections = 8;
+std::vector<OuterPoint> outer_points(const PlanarElement& test, const PlanarElement& source, bool touching) {
+    constexpr int touching_points = 8, bisections = 8;
+    return touching ? graded_rule(test, touching_points) : adaptive_rule(test, source, bisections);
+}
+
+constexpr double inverse_4pi = 1 / (4 * constants::pi);
 
 }  // namespace
 
+double static_scalar(const PlanarElement& test, const PlanarElement& source, bool touching) {
+    double sum = 0;
+    for (const OuterPoint& p : outer_points(test, source, touching))
+        sum += p.weight_m2 * static_charge_potential(source, p.position);
+    return inverse_4pi * sum / (test.area_m2 * source.area_m2);
+}
+
 PairMoments static_pair(const PlanarElement& test, const PlanarElement& source, bool touching) {
-    const auto points = touching ? graded_rule(test, touching_points) : adaptive_rule(test, source, bisections);
+    const auto points = outer_points(test, source, touching);
     const auto moments = accumulate(points, source);
     const double d = test.slope_per_m2, e = source.slope_per_m2;
     PairMoments pair;
@@ -59,10 +70,9 @@ PairMoments static_pair(const PlanarElement& test, const PlanarElement& source, 
                 pair.vector[a][b] += test.constant[l][a].dot(field) + d * dot;
         }
     }
-    const double scale = 1 / (4 * constants::pi);
     for (auto& row : pair.vector)
-        for (auto& x : row) x *= scale;
-    pair.scalar = scale * charge / (test.area_m2 * source.area_m2);
+        for (auto& x : row) x *= inverse_4pi;
+    pair.scalar = inverse_4pi * charge / (test.area_m2 * source.area_m2);
     return pair;
 }
 

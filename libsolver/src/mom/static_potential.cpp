@@ -70,4 +70,13 @@ CellPotential static_potential(const PlanarElement& source, const Vec3& r) {
     return potential;
 }
 
+double static_charge_potential(const PlanarElement& source, const Vec3& r) {
+    const double height = source.normal.dot(r - source.corner[0]);
+    const Vec3 foot = r - height * source.normal;
+    double sum = 0;
+    for (int k = 0; k < source.slots; ++k)
+        sum += edge_term(source.edge_start(k), source.edge_end(k), source.normal, foot, std::abs(height)).scalar;
+    return sum;
+}
+
 }  // namespace annulet

@@ -15,4 +15,7 @@ struct CellPotential {
 /// At the point r, anywhere in space.
 CellPotential static_potential(const PlanarElement& source, const Vec3& r);
 
+/// Integral of 1/R over the whole cell alone, m: at half the cost.
+double static_charge_potential(const PlanarElement& source, const Vec3& r);
+
 }  // namespace annulet

@@ -8,6 +8,8 @@
 #include <cmath>
 #include <utility>
 
+#include "study/swept.hpp"
+
 namespace annulet {
 namespace {
 
@@ -40,10 +42,11 @@ void check_range(double from_hz, double to_hz, int points) {
     if (points == 1 && from_hz != to_hz) refuse("one point cannot sweep a range", "ask for at least 2 points");
 }
 
-MeshOptions mesh_options(const Model& model, double top_frequency_hz, double memory_limit_bytes) {
+MeshOptions mesh_options(const Model& model, double top_frequency_hz, const SolveOptions& solve) {
     MeshOptions options;
     options.top_frequency_hz = top_frequency_hz;
-    options.memory_limit_bytes = memory_limit_bytes;
+    options.memory_limit_bytes = solve.memory_limit_bytes;
+    options.refine = solve.refine;
     if (model.accuracy.cells_per_wavelength) options.cells_per_wavelength = *model.accuracy.cells_per_wavelength;
     if (model.accuracy.cells_across) options.cells_across = *model.accuracy.cells_across;
     return options;
@@ -51,38 +54,32 @@ MeshOptions mesh_options(const Model& model, double top_frequency_hz, double mem
 
 std::vector<std::string> cautions_of(const Model& model) {
     std::vector<std::string> cautions;
-    if (!model.laminates.empty())
-        cautions.push_back(fmt::format(
-            "{} read and placed, but the laminate does not yet enter the solution: the metal is solved in air, "
-            "and on the real board every resonance lies lower",
-            model.laminates.size() == 1 ? "laminate '" + model.laminates.front().name + "' is"
-                                        : fmt::format("{} laminates are", model.laminates.size())));
-    if (model.accuracy.resonance_fraction)
-        cautions.push_back("[accuracy] resonance is read, but the mesh is not yet refined to meet it");
+    for (const Laminate& laminate : model.laminates)
+        if (laminate.permittivity_z)
+            cautions.push_back(fmt::format(
+                "laminate '{}' is anisotropic: its effective isotropic permittivity is used, without the change of "
+                "thickness that goes with it",
+                laminate.name));
     return cautions;
 }
 
+void refuse_static_laminate(const Model& model) {
+    if (!model.laminates.empty() && model.accuracy.laminate == LaminateMethod::fixed_static)
+        refuse("laminate = \"static\" is not available yet", "use laminate = \"full\", or --in-air to leave the sheets out");
+}
+
 void read_network(SolvedModel& solved) {
-    std::vector<std::optional<FeedLine>> lines;
-    for (const auto& port : solved.model.ports) {
-        solved.reference_ohm.push_back(port.reference_ohm);
-        lines.push_back(port.line);
-        solved.curves.push_back({port.name, port.reference_ohm, solved.frequency_hz, {}});
-    }
-    for (const auto& point : solved.points) {
-        const auto admittance = behind_lines(point.frequency_hz, point.admittance_s, lines);
-        solved.network.push_back(network_point(point.frequency_hz, admittance, solved.reference_ohm));
-        for (std::size_t p = 0; p < solved.curves.size(); ++p)
-            solved.curves[p].impedance_ohm.push_back(
-                input_impedance_ohm(admittance, solved.reference_ohm, static_cast<int>(p)));
-    }
+    solved.reference_ohm = references_ohm(solved.model);
+    solved.curves = port_curves(solved.model, solved.points);
+    for (const auto& point : solved.points)
+        solved.network.push_back(
+            network_point(point.frequency_hz, terminal_admittance(solved.model, point.frequency_hz, point.admittance_s),
+                          solved.reference_ohm));
 }
 
 void judge_network(SolvedModel& solved) {
     const auto& goal = solved.model.goal;
     for (const auto& curve : solved.curves) {
-        const auto found = find_resonances(curve, goal.vswr);
-        solved.resonances.insert(solved.resonances.end(), found.begin(), found.end());
         if (!goal.band) continue;
         if (const auto match = band_match(curve, goal.band->from_hz, goal.band->to_hz))
             solved.goals.push_back({curve.port, *match, match->worst_vswr <= goal.vswr});
@@ -92,23 +89,19 @@ void judge_network(SolvedModel& solved) {
     }
 }
 
-SolveQuality worst_of(const std::vector<SweepPoint>& points) {
-    SolveQuality worst{0, 1};
-    for (const auto& point : points) {
-        worst.relative_residual = std::max(worst.relative_residual, point.quality.relative_residual);
-        worst.reciprocal_condition = std::min(worst.reciprocal_condition, point.quality.reciprocal_condition);
-    }
-    return worst;
-}
-
-/// Part of the sweep's time that went into factorising and solving, the rest being filled matrices.
-double factor_share(const std::vector<SweepPoint>& points) {
-    double fill_s = 0, factor_s = 0;
-    for (const auto& point : points) {
-        fill_s += point.fill_s;
-        factor_s += point.factor_s;
-    }
-    return factor_s > 0 ? factor_s / (fill_s + factor_s) : 0;
+// Bounds of an ordinary solution: what lies outside points to a mesh or a model that the numbers do not fit.
+void judge_quality(SolvedModel& solved) {
+    const auto& worst = solved.worst;
+    const auto caution = [&](std::string text) { solved.cautions.push_back(std::move(text)); };
+    if (worst.relative_residual > 1e-10)
+        caution(fmt::format("the equations are solved to a residual of {:.1e} only", worst.relative_residual));
+    if (worst.reciprocal_condition < 1e-12)
+        caution(fmt::format("the matrix is nearly singular: condition number {:.1e}", 1 / worst.reciprocal_condition));
+    if (worst.asymmetry > 1e-6) caution(fmt::format("the ports are reciprocal to {:.1e} only", worst.asymmetry));
+    for (const PowerBalance& balance : solved.balances)
+        if (!(std::abs(balance.ratio() - 1) < 5e-3))
+            caution(fmt::format("at {:.6g} MHz radiation and loss are {:.2f} % of the power into the port",
+                                balance.frequency_hz / 1e6, 100 * balance.ratio()));
 }
 
 }  // namespace
@@ -140,27 +133,33 @@ SolvedModel solve_model(Model model, const SolveOptions& options, Progress* prog
     auto frequencies = sweep_frequencies(model.sweep, options.frequencies);
     if (model.ports.empty()) refuse("the model has no port, so there is nothing to sweep", "add a [[port]]");
 
+    refuse_static_laminate(model);
+
     checkpoint(progress, "mesh", 0, 0);
-    auto mesh = make_mesh(model, mesh_options(model, frequencies.back(), options.memory_limit_bytes));
+    auto mesh = make_mesh(model, mesh_options(model, frequencies.back(), options));
     timing.mesh_s = stage.lap();
 
     checkpoint(progress, "assemble", 0, 0);
     Operator op(std::move(mesh), model.lumped);
-    SolvedModel solved{
-        std::move(model), std::move(op), std::move(frequencies), {}, {}, {}, {}, {}, {}, {}, 0, 0, {}, {}};
+    SolvedModel solved{std::move(model), std::move(op), {}, {}, {}, {}, {}, {}, {}, {}, {}, {}, 0, {}, 0, {}, {}};
     timing.assemble_s = stage.lap();
 
-    solved.points =
-        sweep_every_point(solved.op, solved.frequency_hz, {options.keep_currents, options.threads}, progress);
-    solved.full_solves = static_cast<int>(solved.points.size());
-    const double swept_s = stage.lap();
-    timing.factor_s = swept_s * factor_share(solved.points);
-    timing.assemble_s += swept_s - timing.factor_s;
+    auto swept = sweep_model(solved.op, solved.model, frequencies, options, progress);
+    timing.factor_s = swept.factor_s;
+    timing.assemble_s += stage.lap() - timing.factor_s;
 
-    solved.worst = worst_of(solved.points);
+    solved.frequency_hz = std::move(swept.frequency_hz);
+    solved.points = std::move(swept.points);
+    solved.resonances = std::move(swept.resonances);
+    solved.balances = std::move(swept.balances);
+    solved.solved_hz = std::move(swept.solved_hz);
+    solved.full_solves = swept.full_solves;
+    solved.reflection_error = swept.reflection_error;
+    solved.worst = swept.worst;
     solved.cautions = cautions_of(solved.model);
     read_network(solved);
     judge_network(solved);
+    judge_quality(solved);
     timing.post_s = stage.lap();
     timing.total_s = total.lap();
     solved.timing = timing;

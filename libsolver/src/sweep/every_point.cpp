@@ -3,12 +3,25 @@
 #include <annulet/numerics/symmetric_solver.hpp>
 #include <annulet/sweep/sweep.hpp>
 
+#include <algorithm>
 #include <chrono>
 #include <utility>
 
 namespace annulet {
 
 using Clock = std::chrono::steady_clock;
+
+SolveQuality quality_of(const SymmetricSolver& solver, const Eigen::MatrixXcd& currents, const Eigen::MatrixXcd& v) {
+    const Eigen::MatrixXcd y = v.transpose() * currents;
+    const double scale = y.size() > 0 ? y.cwiseAbs().maxCoeff() : 0;
+    return {solver.relative_residual(currents, v), solver.reciprocal_condition(),
+            scale > 0 ? (y - y.transpose()).cwiseAbs().maxCoeff() / scale : 0};
+}
+
+SolveQuality worse(const SolveQuality& a, const SolveQuality& b) {
+    return {std::max(a.relative_residual, b.relative_residual),
+            std::min(a.reciprocal_condition, b.reciprocal_condition), std::max(a.asymmetry, b.asymmetry)};
+}
 
 SweepPoint solve_point(const Operator& op, double frequency_hz, bool keep_currents) {
     const auto start = Clock::now();
@@ -22,7 +35,7 @@ SweepPoint solve_point(const Operator& op, double frequency_hz, bool keep_curren
     point.frequency_hz = frequency_hz;
     Eigen::MatrixXcd currents = solver.solve(v);
     point.admittance_s = v.transpose() * currents;
-    point.quality = {solver.relative_residual(currents, v), solver.reciprocal_condition()};
+    point.quality = quality_of(solver, currents, v);
     point.fill_s = std::chrono::duration<double>(filled - start).count();
     point.factor_s = std::chrono::duration<double>(Clock::now() - filled).count();
     if (keep_currents) point.currents_a = std::move(currents);

@@ -45,7 +45,8 @@ struct Resonance {
     ResonanceKind kind = ResonanceKind::match;
     double frequency_hz = 0;
     double resistance_ohm = 0;
-    double q = 0;               ///< Q_Z of [Yaghjian2005]
+    double q = 0;               ///< Q_Z of [Yaghjian2005], from the slope of the impedance
+    double q_mode = 0;          ///< of the natural mode it belongs to, |w| / 2|sigma|; 0: not known
     double bandwidth_hz = 0;    ///< where VSWR is below the goal's around it, ends of the sweep included; 0: nowhere
     double uncertainty_hz = 0;  ///< half-width; 0: not estimated
 };

@@ -2,6 +2,7 @@
 #pragma once
 
 #include <annulet/analysis/network.hpp>
+#include <annulet/analysis/power_balance.hpp>
 #include <annulet/core/progress.hpp>
 #include <annulet/model/model.hpp>
 #include <annulet/mom/operator.hpp>
@@ -29,6 +30,8 @@ struct SolveOptions {
     double memory_limit_bytes = 0;  ///< of the matrix, see MeshOptions
     int threads = 0;                ///< see SweepOptions
     bool keep_currents = false;
+    double refine = 1;         ///< see MeshOptions
+    bool every_point = false;  ///< exact fill and full factorisation at every frequency
 };
 
 /// Wall-clock seconds. `assemble_s`: what is done once per geometry and filling the matrices; `factor_s`: factorising
@@ -47,21 +50,24 @@ struct PortGoal {
 struct SolvedModel {
     Model model;
     Operator op;
-    std::vector<double> frequency_hz;
-    std::vector<double> reference_ohm;  ///< per port
-    std::vector<SweepPoint> points;     ///< at the gaps; currents only if kept
-    std::vector<NetworkPoint> network;  ///< at the far ends of the ports' feed lines
-    std::vector<PortCurve> curves;      ///< one per port
-    std::vector<Resonance> resonances;  ///< of all ports, port by port
-    std::vector<PortGoal> goals;        ///< empty: no goal band, or the sweep does not cover it
-    SolveQuality worst;                 ///< over all frequencies
+    std::vector<double> frequency_hz;    ///< those asked for and, around resonances sharper than their step, more
+    std::vector<double> reference_ohm;   ///< per port
+    std::vector<SweepPoint> points;      ///< at the gaps; currents only if kept
+    std::vector<NetworkPoint> network;   ///< at the far ends of the ports' feed lines
+    std::vector<PortCurve> curves;       ///< one per port
+    std::vector<Resonance> resonances;   ///< of all ports, port by port
+    std::vector<PortGoal> goals;         ///< empty: no goal band, or the sweep does not cover it
+    std::vector<PowerBalance> balances;  ///< of the first port, at up to three frequencies
+    SolveQuality worst;                  ///< over all frequencies solved
+    std::vector<double> solved_hz;       ///< where the full matrix was solved
     int full_solves = 0;
+    std::vector<std::vector<double>> reflection_uncertainty;  ///< of |S11| by port and frequency; empty: not estimated
     double reflection_error = 0;  ///< largest error that the sweep adds to |S11|; 0: every point exact
     std::vector<std::string> cautions;
     Timing timing;
 };
 
-/// Meshes for the highest frequency and solves at every one exactly.
+/// Meshes for the highest frequency and solves: from a reduced basis, at few frequencies and on demand exactly.
 /// Throws InputError, NumericalError, Cancelled.
 SolvedModel solve_model(Model model, const SolveOptions& options, Progress* progress = nullptr);
 

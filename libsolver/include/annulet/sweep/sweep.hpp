@@ -14,6 +14,7 @@ namespace annulet {
 struct SolveQuality {
     double relative_residual = 0;     ///< largest over ports of |v - Z I| / (|Z| |I| + |v|)
     double reciprocal_condition = 0;  ///< LAPACK 1-norm estimate
+    double asymmetry = 0;             ///< largest |Y_pq - Y_qp| over the largest |Y_pq|: reciprocity of the ports
 };
 
 struct SweepPoint {
@@ -28,6 +29,13 @@ struct SweepOptions {
     bool keep_currents = true;
     int threads = 0;  ///< 0: OpenMP default
 };
+
+/// What a solution of Z I = v (unknowns x ports) came to; Y = v^T I.
+class SymmetricSolver;
+SolveQuality quality_of(const SymmetricSolver& solver, const Eigen::MatrixXcd& currents, const Eigen::MatrixXcd& v);
+
+/// The worse of both in every figure.
+SolveQuality worse(const SolveQuality& a, const SolveQuality& b);
 
 /// One frequency: exact fill, full factorisation. Throws NumericalError (singular).
 SweepPoint solve_point(const Operator& op, double frequency_hz, bool keep_currents = true);
