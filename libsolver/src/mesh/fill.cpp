@@ -3,6 +3,7 @@
 #include <algorithm>
 #include <cmath>
 #include <limits>
+#include <map>
 
 #include "mesh/triangulate.hpp"
 
@@ -45,6 +46,36 @@ bool crossing(const Vec2& a, const Vec2& b, const Vec2& c, const Vec2& d) {
     return (cross(b - a, c - a) > 0) != (cross(b - a, d - a) > 0) &&
            (cross(d - c, a - c) > 0) != (cross(d - c, b - c) > 0);
 }
+
+// Smallest of h_max and own + growth * distance over all sources, which are kept by squares as wide as their reach.
+class SizeMap {
+public:
+    SizeMap(const std::vector<std::pair<Vec2, double>>& sources, double growth, double h_max_m)
+        : growth_(growth), h_max_m_(h_max_m), reach_m_(h_max_m / growth) {
+        for (const auto& source : sources)
+            if (source.second < h_max_m) squares_[square(source.first)].push_back(source);
+    }
+
+    double at(const Vec2& p) const {
+        double h = h_max_m_;
+        const auto [x, y] = square(p);
+        for (long long i = x - 1; i <= x + 1; ++i)
+            for (long long j = y - 1; j <= y + 1; ++j)
+                if (const auto found = squares_.find({i, j}); found != squares_.end())
+                    for (const auto& [centre, own] : found->second)
+                        h = std::min(h, own + growth_ * (p - centre).norm());
+        return h;
+    }
+
+private:
+    std::pair<long long, long long> square(const Vec2& p) const {
+        return {static_cast<long long>(std::floor(p.x() / reach_m_)),
+                static_cast<long long>(std::floor(p.y() / reach_m_))};
+    }
+
+    double growth_, h_max_m_, reach_m_;
+    std::map<std::pair<long long, long long>, std::vector<std::pair<Vec2, double>>> squares_;
+};
 
 class Filler {
 public:
@@ -274,12 +305,8 @@ private:
             }
             loops.push_back(std::move(loop));
         }
-        const double h_max = request_.h_max_m / request_.refine;
-        const auto size = [&](const Vec2& p) {
-            double h = h_max;
-            for (const auto& [at, own] : sizes) h = std::min(h, own + request_.growth * (p - at).norm());
-            return h;
-        };
+        const SizeMap map(sizes, request_.growth, request_.h_max_m / request_.refine);
+        const auto size = [&](const Vec2& p) { return map.at(p); };
         const Triangulation inner = triangulate(loops, size);
         for (std::size_t i = number.size(); i < inner.points.size(); ++i) {
             number.push_back(static_cast<int>(filled_.points.size()));
