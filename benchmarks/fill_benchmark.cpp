@@ -3,6 +3,7 @@
 #include <annulet/core/constants.hpp>
 #include <annulet/mesh/mesh.hpp>
 #include <annulet/mom/operator.hpp>
+#include <annulet/sweep/sweep.hpp>
 
 #include <benchmark/benchmark.h>
 #include <omp.h>
@@ -56,6 +57,22 @@ void fill(benchmark::State& state) {
                            benchmark::Counter::kIsIterationInvariantRate | benchmark::Counter::kInvert);
 }
 
+/// The whole of 101 exact points, operator included; the last is checked to be
+/// passive and the same on a second solution.
+void sweep_101_points(benchmark::State& state) {
+    std::vector<double> f;
+    for (int i = 0; i < 101; ++i) f.push_back(5e8 + 1e7 * i);
+    std::complex<double> last = 0;
+    for (auto _ : state) {
+        const Operator op(ring());
+        last = sweep_every_point(op, f, {false, 0}).back().admittance_s(0, 0);
+    }
+    const auto again = solve_point(Operator(ring()), f.back(), false).admittance_s(0, 0);
+    if (!(last.real() > 0 && std::abs(last - again) < 1e-9 * std::abs(again)))
+        state.SkipWithError("the sweep is wrong");
+}
+
+BENCHMARK(sweep_101_points)->UseRealTime()->Unit(benchmark::kSecond)->Iterations(1);
 BENCHMARK(kernel_limit);
 BENCHMARK(fill)->Unit(benchmark::kMillisecond);
 

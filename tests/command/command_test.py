@@ -134,7 +134,12 @@ class Command(unittest.TestCase):
         result = self.run_program("sweep", MODELS / f"{model}.toml", "--json", "-", "--points", "21",
                                   *(["--in-air"] if air else []))
         self.assertEqual(result.returncode, 0, result.stderr)
-        found = json.loads(result.stdout)["resonances"]
+        result = json.loads(result.stdout)
+        # Poynting: what goes in is radiated or lost (copper, laminate, resistors); two ports are reciprocal.
+        for power in result["quality"]["power"]:
+            self.assertAlmostEqual(power["power_balance"], 1, delta=1e-3)
+        self.assertLess(result["quality"]["port_asymmetry"], 1e-4)
+        found = result["resonances"]
         for port, kinds in ports.items():
             for kind, value in kinds.items():
                 with self.subTest(model=name, port=port, kind=kind):
