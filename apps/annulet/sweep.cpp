@@ -95,7 +95,7 @@ int run(const SweepOptionsGiven& given) {
 
     auto progress = begin_work(options);
     auto solved = given.every_point ? solve_model(std::move(loaded.model), solve, progress.get())
-                                          : solve_with_error_bars(loaded.model, solve, {}, progress.get());
+                                    : solve_with_error_bars(loaded.model, solve, {}, progress.get());
     if (sheets_left_out)
         solved.cautions.push_back("solved in air as asked: on the real board every resonance lies lower");
     const auto json = fill(files, options, solved, loaded.origin);

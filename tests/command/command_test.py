@@ -197,8 +197,9 @@ class Command(unittest.TestCase):
     def test_set_overrides_a_parameter(self):
         plain = json.loads(self.sweep("--json", "-").stdout)
         changed = json.loads(self.sweep("--json", "-", "--set", "radius=50", "--set", "width=4 mm").stdout)
-        self.assertAlmostEqual(plain["parameters"]["radius"], 0.054)
-        self.assertAlmostEqual(changed["parameters"]["radius"], 0.05)
+        # A bare number stays one, in the unit of the keys that use it; one with a unit is in SI.
+        self.assertAlmostEqual(plain["parameters"]["radius"], 58.4)
+        self.assertAlmostEqual(changed["parameters"]["radius"], 50)
         self.assertAlmostEqual(changed["parameters"]["width"], 0.004)
         self.assertNotEqual(plain["port"]["feed"]["reflection"], changed["port"]["feed"]["reflection"])
 

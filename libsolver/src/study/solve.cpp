@@ -65,7 +65,8 @@ std::vector<std::string> cautions_of(const Model& model) {
 
 void refuse_static_laminate(const Model& model) {
     if (!model.laminates.empty() && model.accuracy.laminate == LaminateMethod::fixed_static)
-        refuse("laminate = \"static\" is not available yet", "use laminate = \"full\", or --in-air to leave the sheets out");
+        refuse("laminate = \"static\" is not available yet",
+               "use laminate = \"full\", or --in-air to leave the sheets out");
 }
 
 void read_network(SolvedModel& solved) {

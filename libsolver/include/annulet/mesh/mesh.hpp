@@ -45,11 +45,11 @@ struct SheetMesh {
         CellKind kind = CellKind::quadrilateral;  ///< or triangle
         std::array<int, 4> node{-1, -1, -1, -1};
     };
-    int laminate = -1;                 ///< index into Mesh::laminates
-    std::vector<double> level_m;       ///< heights of the layer interfaces from the bottom face up, layers + 1
+    int laminate = -1;            ///< index into Mesh::laminates
+    std::vector<double> level_m;  ///< heights of the layer interfaces from the bottom face up, layers + 1
     std::vector<Vec2> plan;
     std::vector<Column> columns;
-    std::vector<int> metal_on_top;     ///< by column: the cell that covers the face exactly, or -1; empty: none
+    std::vector<int> metal_on_top;  ///< by column: the cell that covers the face exactly, or -1; empty: none
     std::vector<int> metal_on_bottom;
     int layers() const { return static_cast<int>(level_m.size()) - 1; }
 };

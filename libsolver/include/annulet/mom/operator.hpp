@@ -60,7 +60,8 @@ public:
     /// unknowns x unknowns.
     Eigen::SparseMatrix<std::complex<double>> surface_impedance_matrix(double frequency_hz) const;
 
-    /// All that Z holds beside the two potentials: surface impedances, masses of the sheets, lumped parts. Independent of this object.
+    /// All that Z holds beside the two potentials: surface impedances, masses of the sheets, lumped parts. Independent
+    /// of this object.
     std::vector<ExactTerm> exact_terms() const;
 
     const PairTables& pair_tables() const { return *tables_; }

@@ -19,10 +19,10 @@ struct ConvergeOptions {
     int most_meshes = 5;
 };
 
-/// `solve_model` on the mesh asked for and on one finer by half, whose results are given; large meshes are compared with
-/// one coarser by a third instead. Sets `uncertainty_hz` of every resonance and
-/// the uncertainty of the reflections. Where the model's [accuracy] asks for more, meshes finer by half follow until
-/// every resonance is that certain, or a caution says why not. Throws as `solve_model`.
+/// `solve_model` on the mesh asked for and on one finer by half, whose results are given; large meshes are compared
+/// with one coarser by a third instead. Sets `uncertainty_hz` of every resonance and the uncertainty of the
+/// reflections. Where the model's [accuracy] asks for more, meshes finer by half follow until every resonance is that
+/// certain, or a caution says why not. Throws as `solve_model`.
 SolvedModel solve_with_error_bars(const Model& model, const SolveOptions& options, const ConvergeOptions& converge = {},
                                   Progress* progress = nullptr);
 
