@@ -5,6 +5,7 @@
 #include <annulet/analysis/far_field.hpp>
 #include <annulet/core/constants.hpp>
 #include <annulet/mesh/mesh.hpp>
+#include <annulet/mom/affine.hpp>
 #include <annulet/sweep/sweep.hpp>
 
 #include <Eigen/LU>
@@ -137,6 +138,23 @@ TEST(WireAntennas, PowerBalance) {
     for (const Model& model : {dipole(0.47, 1e-3, 2e-3), lossy, monopole(0.24, 2e-3, 4e-3), tee,
                                folded_dipole(0.48, 0.02, 1e-3, 2e-3, 0.01), wire_loop(0.16, 1e-3, 2e-3)})
         EXPECT_NEAR(balance(model, frequency_hz), 1, 2e-4);
+}
+
+// The form that the fast sweep uses, with the wire's own impedance, over ground and free.
+TEST(WireAntennas, AffineFormIsTheMatrix) {
+    Model lossy = monopole(0.24, 2e-3, 4e-3);
+    lossy.wires[0].conductor.conductivity_s_per_m = 1e5;
+    lossy.wires[0].conductor.roughness_rms_m = 1e-5;
+    MeshOptions options;
+    options.top_frequency_hz = frequency_hz;
+    for (const Model& model : {lossy, folded_dipole(0.48, 0.02, 1e-3, 3e-3, 0.01, true)}) {
+        const Operator op(make_mesh(model, options));
+        const AffineOperator affine(op, frequency_hz, {});
+        for (const double f : {0.1 * frequency_hz, 0.77 * frequency_hz}) {
+            const Eigen::MatrixXcd exact = op.impedance_matrix(f);
+            EXPECT_LT((affine.impedance_matrix(Complex(0, 2 * constants::pi * f)) - exact).norm(), 1e-6 * exact.norm());
+        }
+    }
 }
 
 // Lorentz, on the matrix as the quadrature leaves it.

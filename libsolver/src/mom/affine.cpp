@@ -62,8 +62,9 @@ double largest_distance_m(const std::vector<Element>& elements, const Eigen::Mat
                           std::optional<double> ground_plane_m) {
     double largest = 0, radius = 0;
     for (Index e = 0; e < centre.cols(); ++e) {
-        for (const Vec3& corner : elements[static_cast<std::size_t>(e)].corner)
-            radius = std::max(radius, (corner - centre.col(e)).norm());
+        const Element& element = elements[static_cast<std::size_t>(e)];
+        for (int i = 0; i < element.corners(); ++i)
+            radius = std::max(radius, (element.corner[static_cast<std::size_t>(i)] - centre.col(e)).norm());
         for (Index other = 0; other <= e; ++other) {
             Vec3 apart = centre.col(e) - centre.col(other);
             if (ground_plane_m)

@@ -28,6 +28,11 @@ std::vector<double> wire_radii(const Mesh& mesh) {
     return radii;
 }
 
+/// Of foil in ohm, of a round wire in ohm/m.
+Complex conductor_impedance(const Conductor& conductor, double wire_radius_m, Complex s) {
+    return wire_radius_m > 0 ? wire_impedance_per_m(conductor, wire_radius_m, s) : sheet_impedance(conductor, s);
+}
+
 }  // namespace
 
 Operator::Operator(Mesh mesh, std::vector<Lumped> parts)
@@ -73,13 +78,10 @@ Eigen::MatrixXd Operator::static_scalar_potential() const {
 
 Eigen::SparseMatrix<Complex> Operator::surface_impedance_matrix(double frequency_hz) const {
     Eigen::SparseMatrix<Complex> sum(unknowns(), unknowns());
-    for (std::size_t i = 0; i < gram_.size(); ++i) {
-        const Conductor& conductor = mesh_.conductors[i];
-        if (conductor.perfect()) continue;
-        const Complex z = wire_radius_m_[i] > 0 ? wire_impedance_per_m(conductor, wire_radius_m_[i], frequency_hz)
-                                                : sheet_impedance(conductor, frequency_hz);
-        sum += z * gram_[i].cast<Complex>();
-    }
+    const Complex s(0, 2 * constants::pi * frequency_hz);
+    for (std::size_t i = 0; i < gram_.size(); ++i)
+        if (!mesh_.conductors[i].perfect())
+            sum += conductor_impedance(mesh_.conductors[i], wire_radius_m_[i], s) * gram_[i].cast<Complex>();
     return sum;
 }
 
@@ -87,8 +89,9 @@ std::vector<ExactTerm> Operator::exact_terms() const {
     std::vector<ExactTerm> terms;
     for (std::size_t i = 0; i < gram_.size(); ++i)
         if (!mesh_.conductors[i].perfect())
-            terms.push_back(
-                {gram_[i], [conductor = mesh_.conductors[i]](Complex s) { return sheet_impedance(conductor, s); }});
+            terms.push_back({gram_[i], [conductor = mesh_.conductors[i], radius_m = wire_radius_m_[i]](Complex s) {
+                                 return conductor_impedance(conductor, radius_m, s);
+                             }});
     for (std::size_t i = 0; i < permittivities_.size(); ++i)
         terms.push_back({basis_.polarisation_mass[i], [permittivity = permittivities_[i]](Complex s) {
                              return polarisation_factor(permittivity, s);

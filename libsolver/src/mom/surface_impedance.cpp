@@ -42,11 +42,16 @@ Complex sheet_impedance(const Conductor& conductor, Complex s) {
 }
 
 Complex wire_impedance_per_m(const Conductor& conductor, double radius_m, double frequency_hz) {
+    return wire_impedance_per_m(conductor, radius_m, Complex(0, 2 * constants::pi * frequency_hz));
+}
+
+Complex wire_impedance_per_m(const Conductor& conductor, double radius_m, Complex s) {
     if (conductor.perfect()) return 0;
-    const double sigma = conductor.conductivity_s_per_m, delta = skin_depth_m(sigma, frequency_hz);
-    const Complex gamma = Complex(1, 1) / delta;
+    if (s.imag() < 0) return std::conj(wire_impedance_per_m(conductor, radius_m, std::conj(s)));
+    const double sigma = conductor.conductivity_s_per_m;
+    const Complex gamma = std::sqrt(s * constants::mu0_h_per_m * sigma);
     const Complex z = gamma / (2 * constants::pi * radius_m * sigma) * bessel_i0_over_i1(gamma * radius_m);
-    return roughness_factor(conductor.roughness_rms_m, delta) * z;
+    return complex_roughness_factor(conductor.roughness_rms_m, gamma) * z;
 }
 
 Complex part_impedance(const Lumped& part, double frequency_hz) {

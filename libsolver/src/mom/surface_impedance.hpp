@@ -18,6 +18,8 @@ std::complex<double> sheet_impedance(const Conductor& conductor, std::complex<do
 /// Internal impedance per length (ohm/m) of a round wire: gamma / (2 pi a sigma) I0(gamma a) / I1(gamma a),
 /// gamma = (1 + j)/delta ([Ramo1994] ch. 4), times the roughness factor. Zero if perfect.
 std::complex<double> wire_impedance_per_m(const Conductor& conductor, double radius_m, double frequency_hz);
+/// The same at s = sigma + jw, continued as that of the foil.
+std::complex<double> wire_impedance_per_m(const Conductor& conductor, double radius_m, std::complex<double> s);
 
 /// Skin depth, m; conductivity finite.
 double skin_depth_m(double conductivity_s_per_m, double frequency_hz);
