@@ -167,7 +167,7 @@ TEST(ReducedSweep, TooFewSolvesAreAFailure) {
     const Operator op(ring(0.054, 0.008, 16));
     const AffineOperator affine(op, high_hz);
     ReducedOptions options;
-    options.most_solves = 4;
+    options.most_solves = 3;
     EXPECT_THROW(ReducedSweep(affine, low_hz, high_hz, options), NumericalError);
 }
 

@@ -19,6 +19,7 @@ constexpr std::size_t few_points = 12;
 constexpr std::size_t search_points = 1001;
 constexpr double open_port_ohm = 1e7;
 constexpr std::size_t most_balances = 3;
+constexpr double least_visible = 5e-3;  ///< change of S that is worth points of its own
 
 void sort_unique(std::vector<double>& values) {
     std::sort(values.begin(), values.end());
@@ -68,10 +69,12 @@ private:
 
     Eigen::MatrixXcd scattering(double f) const { return options().scattering(f, sweep_.admittance_s(f)); }
 
-    /// A mode that no port notices needs no points of its own.
+    /// A mode that no port notices needs no points of its own: S at it against the mean of S on either side.
     bool shows(const ReducedPole& pole) const {
-        const double f = pole.frequency_hz(), away = f * (1 + 2 / pole.q());
-        return away < asked_hz_.back() && (scattering(f) - scattering(away)).cwiseAbs().maxCoeff() > 1e-3;
+        const double f = pole.frequency_hz(), away = f / pole.q();
+        if (f - away < asked_hz_.front() || f + away > asked_hz_.back()) return false;
+        const Eigen::MatrixXcd around = 0.5 * (scattering(f - away) + scattering(f + away));
+        return (scattering(f) - around).cwiseAbs().maxCoeff() > least_visible;
     }
 
     std::vector<double> printed_grid() const {
@@ -99,7 +102,8 @@ private:
         for (const Resonance& r : found)
             add_cluster(grid, low, high, r.frequency_hz, 0.02 * r.frequency_hz / std::max(r.q, 1.0));
         found = find(grid);
-        for (Resonance& r : found) r.q_mode = mode_q(r);
+        const auto modes = port_modes();
+        for (Resonance& r : found) r.q_mode = mode_q(r, modes);
         return found;
     }
 
@@ -113,24 +117,41 @@ private:
         return found;
     }
 
-    /// Q of the nearest mode with the port shorted (series) or open (parallel), the others in their references; a match
-    /// belongs to the nearer of both. 0: behind a line, or no mode within the width of the resonance.
-    double mode_q(const Resonance& resonance) const {
+    /// Modes with one port shorted or open and the others in their references.
+    struct PortModes {
+        std::vector<ReducedPole> shorted, open;
+    };
+    std::vector<PortModes> port_modes() const {
+        std::vector<PortModes> modes;
+        for (std::size_t p = 0; p < model_.ports.size(); ++p) {
+            auto termination = references_ohm(model_);
+            termination[p] = 0;
+            modes.push_back({sweep_.poles(termination), {}});
+            termination[p] = open_port_ohm;
+            modes.back().open = sweep_.poles(termination);
+        }
+        return modes;
+    }
+
+    /// Q of the nearest mode, of the shorted port (series) or the open one (parallel); a match belongs to the nearer of
+    /// both. 0: behind a line, or no mode within the width of the resonance.
+    double mode_q(const Resonance& resonance, const std::vector<PortModes>& modes) const {
         const auto& ports = model_.ports;
         const auto port = std::find_if(ports.begin(), ports.end(), [&](auto& p) { return p.name == resonance.port; });
         if (port == ports.end() || port->line) return 0;
-        const auto index = static_cast<std::size_t>(port - ports.begin());
         double best_q = 0, best = resonance.frequency_hz / std::max(resonance.q, 1.0);
-        for (const double own : {0.0, open_port_ohm}) {
-            if (resonance.kind == ResonanceKind::series && own > 0) continue;
-            if (resonance.kind == ResonanceKind::parallel && own == 0) continue;
-            auto termination = references_ohm(model_);
-            termination[index] = own;
-            for (const ReducedPole& pole : sweep_.poles(termination)) {
+        const auto look = [&](const std::vector<ReducedPole>& poles) {
+            for (const ReducedPole& pole : poles) {
                 const double away = std::abs(pole.frequency_hz() - resonance.frequency_hz);
-                if (away < best) best = away, best_q = pole.q();
+                if (away < best) {
+                    best = away;
+                    best_q = pole.q();
+                }
             }
-        }
+        };
+        const PortModes& own = modes[static_cast<std::size_t>(port - ports.begin())];
+        if (resonance.kind != ResonanceKind::parallel) look(own.shorted);
+        if (resonance.kind != ResonanceKind::series) look(own.open);
         return best_q;
     }
 

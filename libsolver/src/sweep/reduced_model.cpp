@@ -55,6 +55,68 @@ MatrixXcd symmetric_from(const Eigen::VectorXd& real, const Eigen::VectorXd& ima
     return full;
 }
 
+/// LDL^T without pivots of a small complex symmetric matrix, real and imaginary parts apart so that the loops
+/// vectorise.
+class SmallFactors {
+public:
+    explicit SmallFactors(const MatrixXcd& a) : re_(a.real()), im_(a.imag()), inverse_(a.rows()) {
+        const Index n = a.rows();
+        for (Index k = 0; k < n; ++k) {
+            const Complex inverse = inverse_[k] = 1.0 / Complex(re_(k, k), im_(k, k));
+            for (Index c = k + 1; c < n; ++c) subtract(k, c, Complex(re_(c, k), im_(c, k)) * inverse);
+            for (Index r = k + 1; r < n; ++r) {
+                const Complex scaled = Complex(re_(r, k), im_(r, k)) * inverse;
+                re_(r, k) = scaled.real();
+                im_(r, k) = scaled.imag();
+            }
+        }
+    }
+
+    MatrixXcd solve(MatrixXcd x) const {
+        const Index n = re_.rows();
+        for (Index column = 0; column < x.cols(); ++column) {
+            auto v = x.col(column);
+            for (Index k = 0; k < n; ++k)
+                for (Index r = k + 1; r < n; ++r) v[r] -= multiply(re_(r, k), im_(r, k), v[k]);
+            for (Index k = 0; k < n; ++k) v[k] = multiply(inverse_[k].real(), inverse_[k].imag(), v[k]);
+            for (Index k = n - 1; k >= 0; --k)
+                for (Index r = k + 1; r < n; ++r) v[k] -= multiply(re_(r, k), im_(r, k), v[r]);
+        }
+        return x;
+    }
+
+private:
+    /// Without the tests for infinities of the operator.
+    static Complex multiply(double re, double im, Complex z) {
+        return {re * z.real() - im * z.imag(), re * z.imag() + im * z.real()};
+    }
+
+    /// Column c minus factor times column k, from the diagonal down.
+    void subtract(Index k, Index c, Complex factor) {
+        const double f = factor.real(), g = factor.imag();
+        const double *from_re = re_.col(k).data(), *from_im = im_.col(k).data();
+        double *to_re = re_.col(c).data(), *to_im = im_.col(c).data();
+        for (Index r = c; r < re_.rows(); ++r) {
+            to_re[r] -= f * from_re[r] - g * from_im[r];
+            to_im[r] -= f * from_im[r] + g * from_re[r];
+        }
+    }
+
+    MatrixXd re_, im_;
+    VectorXcd inverse_;
+};
+
+/// X of A X = B for a small complex symmetric A, with one step of refinement; by LU where the residual shows that
+/// pivots were needed.
+MatrixXcd solve_small(const MatrixXcd& a, const MatrixXcd& b) {
+    constexpr double least_accuracy = 1e-13;
+    const SmallFactors factors(a);
+    MatrixXcd x = factors.solve(b);
+    x += factors.solve(b - a * x);
+    if ((a * x - b).norm() <= least_accuracy * (a.norm() * x.norm() + b.norm())) return x;
+    return a.partialPivLu().solve(b);
+}
+
 }  // namespace
 
 double ReducedPole::frequency_hz() const {
@@ -93,7 +155,7 @@ void ReducedModel::add(const AffineOperator& affine, const MatrixXcd& currents) 
     if (columns.cols() > 0) project(affine, columns);
 }
 
-void ReducedModel::add_dominant(const AffineOperator& affine, const MatrixXcd& currents, double least_part) {
+MatrixXd ReducedModel::principal_directions(const MatrixXcd& currents, double least_part) const {
     MatrixXd parts(currents.rows(), 2 * currents.cols());
     parts << currents.real(), currents.imag();
     for (int pass = 0; pass < 2; ++pass) parts -= basis_ * (basis_.transpose() * parts);
@@ -102,7 +164,7 @@ void ReducedModel::add_dominant(const AffineOperator& affine, const MatrixXcd& c
     Index rank = 0;
     while (rank < sigma.size() && sigma[rank] > least_part * sigma[0] && sigma[rank] > dependent * currents.norm())
         ++rank;
-    if (rank > 0) add(affine, svd.matrixU().leftCols(rank).cast<Complex>());
+    return svd.matrixU().leftCols(rank);
 }
 
 void ReducedModel::project(const AffineOperator& affine, const MatrixXd& columns) {
@@ -144,7 +206,7 @@ MatrixXcd ReducedModel::derivative(const AffineOperator& affine, Complex s) cons
 }
 
 MatrixXcd ReducedModel::solve(const AffineOperator& affine, Complex s) const {
-    const MatrixXcd y = matrix(affine, s).partialPivLu().solve(ports_.cast<Complex>());
+    const MatrixXcd y = solve_small(matrix(affine, s), ports_.cast<Complex>());
     if (!y.allFinite())
         throw NumericalError(
             fmt::format("the reduced matrix is singular at {:.9g} Hz", s.imag() / (2 * constants::pi)));

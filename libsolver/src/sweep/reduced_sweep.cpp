@@ -20,13 +20,15 @@ namespace annulet {
 using Complex = std::complex<double>;
 using Eigen::Index;
 using Eigen::MatrixXcd;
+using Eigen::MatrixXd;
 
 namespace {
 
 constexpr int grid_points = 64;
-constexpr std::size_t fewest_factors = 4;  ///< before corrections take the place of solutions
-constexpr double dominant = 0.1;           ///< part of a correction worth a direction
-constexpr double contraction = 0.1;        ///< of the error that a correction must bring
+constexpr std::size_t fewest_factors = 4;    ///< before corrections take the place of solutions
+constexpr double dominant = 0.1;             ///< part of a correction worth a direction
+constexpr double contraction = 0.1;          ///< of the error that a correction must bring
+constexpr std::size_t most_corrections = 4;  ///< at a time
 constexpr double same_frequency = 1e-10;
 /// The nearest factorisation stands for that of the frequency itself, so an estimate is right in size only.
 constexpr double estimate_margin = 3, verified_margin = 3;
@@ -77,6 +79,10 @@ double ReducedSweep::difference(double frequency_hz, const MatrixXcd& a, const M
     return (s(a) - s(b)).cwiseAbs().maxCoeff();
 }
 
+ReducedSweep::Estimate ReducedSweep::largest(const std::vector<Estimate>& found) {
+    return *std::max_element(found.begin(), found.end(), [](auto& a, auto& b) { return a.error < b.error; });
+}
+
 void ReducedSweep::run(Progress* progress) {
     const BlasThreads threads(suited_threads(affine_->op().unknowns()));
     const auto step = [&](double error_left) {
@@ -86,18 +92,20 @@ void ReducedSweep::run(Progress* progress) {
         step(1);
         solve_at(f);
     }
+    const auto fine = [&](const Estimate& e) { return e.error * estimate_margin <= options_.tolerance; };
     for (int passes = 0; passes < 2;) {
-        const auto found = estimate(grid(passes == 0 ? 0 : 0.5));
-        const auto worst =
-            *std::max_element(found.begin(), found.end(), [](auto& a, auto& b) { return a.error < b.error; });
+        auto found = estimate(grid(passes == 0 ? 0 : 0.5));
+        // Poles are worth looking for only once nothing shows on the grid.
+        if (std::all_of(found.begin(), found.end(), fine)) {
+            const auto at_poles = estimate(pole_grid());
+            found.insert(found.end(), at_poles.begin(), at_poles.end());
+        }
+        const Estimate worst = largest(found);
         step(worst.error);
         estimates_.insert(estimates_.end(), found.begin(), found.end());
-        const bool fine = worst.error * estimate_margin <= options_.tolerance;
-        if (fine && ++passes < 2) continue;
-        if (fine && verify(*std::max_element(estimates_.begin(), estimates_.end(),
-                                             [](auto& a, auto& b) { return a.error < b.error; })))
-            break;
-        if (!fine && !enrich(worst)) solve_at(worst.frequency_hz);
+        if (fine(worst) && ++passes < 2) continue;
+        if (fine(worst) && verify(largest(estimates_))) break;
+        if (!fine(worst)) improve(found);
         estimates_.clear();
         passes = 0;
     }
@@ -145,16 +153,42 @@ void ReducedSweep::solve_at(double frequency_hz) {
     model_.add(*affine_, currents);
 }
 
+/// Corrects all local maxima of the error at a time, in the order of their size; solves where that is not enough.
+void ReducedSweep::improve(const std::vector<Estimate>& found) {
+    auto ordered = found;
+    std::sort(ordered.begin(), ordered.end(), [](auto& a, auto& b) { return a.frequency_hz < b.frequency_hz; });
+    std::vector<Estimate> wrong;
+    for (std::size_t i = 0; i < ordered.size(); ++i) {
+        const bool peak = (i == 0 || ordered[i].error >= ordered[i - 1].error) &&
+                          (i + 1 == ordered.size() || ordered[i].error > ordered[i + 1].error);
+        if (peak && ordered[i].error * estimate_margin > options_.tolerance) wrong.push_back(ordered[i]);
+    }
+    std::sort(wrong.begin(), wrong.end(), [](auto& a, auto& b) { return a.error > b.error; });
+    wrong.resize(std::min(wrong.size(), most_corrections));
+    if (!enrich(wrong)) solve_at(wrong.front().frequency_hz);
+}
+
 // Poles that are none of the antenna appear where directions of the basis cancel; a correction through the nearest
 // factorisation, a step of residual inverse iteration [Neumaier1985], removes them without a new one.
-bool ReducedSweep::enrich(const Estimate& worst) {
+bool ReducedSweep::enrich(const std::vector<Estimate>& wrong) {
     if (factors_.size() < fewest_factors) return false;
-    const std::vector<Complex> s{on_axis(worst.frequency_hz)};
-    const std::vector<MatrixXcd> y{model_.solve(*affine_, s[0])};
-    model_.add_dominant(*affine_, nearest_factor(worst.frequency_hz).solver.solve(model_.residuals(*affine_, s, y)),
-                        dominant);
+    std::vector<MatrixXd> directions;
+    Index count = 0;
+    for (const Estimate& e : wrong) {
+        const std::vector<Complex> s{on_axis(e.frequency_hz)};
+        const std::vector<MatrixXcd> y{model_.solve(*affine_, s[0])};
+        const MatrixXcd correction = nearest_factor(e.frequency_hz).solver.solve(model_.residuals(*affine_, s, y));
+        directions.push_back(model_.principal_directions(correction, dominant));
+        count += directions.back().cols();
+    }
+    MatrixXcd all(affine_->op().unknowns(), count);
+    for (const MatrixXd& d : directions) {
+        all.middleCols(all.cols() - count, d.cols()) = d.cast<Complex>();
+        count -= d.cols();
+    }
+    model_.add(*affine_, all);
     ++enrichments_;
-    return estimate({worst.frequency_hz}).front().error < contraction * worst.error;
+    return estimate({wrong.front().frequency_hz}).front().error < contraction * wrong.front().error;
 }
 
 const ReducedSweep::Factor& ReducedSweep::nearest_factor(double frequency_hz) const {
@@ -200,6 +234,12 @@ std::vector<double> ReducedSweep::grid(double shift) const {
         const double root = low + (high - low) * (i + shift) / (grid_points - 1);
         frequencies.push_back(std::min(root * root, to_hz_));
     }
+    return frequencies;
+}
+
+/// The poles of the reduced model and the ends of their bands.
+std::vector<double> ReducedSweep::pole_grid() const {
+    std::vector<double> frequencies;
     for (const ReducedPole& pole : poles()) {
         const double f = pole.frequency_hz(), half_width = std::abs(pole.s.real()) / (2 * constants::pi);
         for (double at : {f, f - half_width, f + half_width})

@@ -33,8 +33,8 @@ public:
     /// Adds the parts of currents (unknowns x m) that the basis lacks, real and imaginary parts apart.
     void add(const AffineOperator& affine, const Eigen::MatrixXcd& currents);
 
-    /// Adds only their principal directions outside the basis, down to `least_part` of the largest.
-    void add_dominant(const AffineOperator& affine, const Eigen::MatrixXcd& currents, double least_part);
+    /// Orthonormal directions of currents (unknowns x m) outside the basis, down to `least_part` of the largest.
+    Eigen::MatrixXd principal_directions(const Eigen::MatrixXcd& currents, double least_part) const;
 
     int size() const { return static_cast<int>(basis_.cols()); }
     const Eigen::MatrixXd& basis() const { return basis_; }  ///< V: unknowns x size
@@ -114,13 +114,16 @@ private:
         double frequency_hz = 0;
         double error = 0;
     };
+    static Estimate largest(const std::vector<Estimate>& found);
     void run(Progress* progress);
     void solve_at(double frequency_hz);
     void drop_factor();
-    bool enrich(const Estimate& worst);
+    bool enrich(const std::vector<Estimate>& wrong);
+    void improve(const std::vector<Estimate>& found);
     const Factor& nearest_factor(double frequency_hz) const;
     bool verify(const Estimate& worst);
     std::vector<double> grid(double shift) const;
+    std::vector<double> pole_grid() const;
     std::vector<Estimate> estimate(const std::vector<double>& frequency_hz) const;
     std::vector<double> shifts() const;
     double difference(double frequency_hz, const Eigen::MatrixXcd& a, const Eigen::MatrixXcd& b) const;
