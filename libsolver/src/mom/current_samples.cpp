@@ -1,5 +1,7 @@
 #include <annulet/mom/current_samples.hpp>
 
+#include <cmath>
+
 #include "mom/pair_fill.hpp"
 
 namespace annulet {
@@ -26,6 +28,7 @@ void append(const LocalTable& table, const Basis& basis, const Coefficients& c, 
                 out.moment_a_m(axis, next) = table.sign * sum;
             }
             out.charge_c_per_s[next] = table.sign * table.charge_at(j, lane) * outflow;
+            out.radius_m[next] = std::sqrt(table.radius2[static_cast<std::size_t>(lane)]);
             out.element.push_back(element);
         }
     }
@@ -39,7 +42,11 @@ CurrentSamples sample_currents(const Operator& op, const Eigen::VectorXcd& coeff
     Eigen::Index points = 0;
     for (std::size_t s = 0; s < sets; ++s)
         for (const LocalTable& t : sources[s].fine) points += t.points * t.lanes;
-    CurrentSamples out{Eigen::Matrix3Xd(3, points), Eigen::Matrix3Xcd(3, points), Eigen::VectorXcd(points), {}};
+    CurrentSamples out{Eigen::Matrix3Xd(3, points),
+                       Eigen::Matrix3Xcd(3, points),
+                       Eigen::VectorXcd(points),
+                       Eigen::VectorXd(points),
+                       {}};
     const Coefficients c{op.basis().slots * coefficients, op.basis().divergence * coefficients};
     Eigen::Index next = 0;
     for (std::size_t s = 0; s < sets; ++s)

@@ -12,6 +12,7 @@ struct CurrentSamples {
     Eigen::Matrix3Xd position_m;      ///< 3 x points
     Eigen::Matrix3Xcd moment_a_m;     ///< 3 x points: weight times current density, ampere metre
     Eigen::VectorXcd charge_c_per_s;  ///< points: weight times div J, ampere (charge = -1/(jw) of it)
+    Eigen::VectorXd radius_m;         ///< points: of the wire whose axis the point lies on, 0 on surfaces
     std::vector<int> element;         ///< of each point: mesh cells first, then panels and layers of the sheets
 };
 
