@@ -30,7 +30,7 @@ class Command(unittest.TestCase):
 
     def run_program(self, *arguments, **options):
         return subprocess.run([PROGRAM, *map(str, arguments)], cwd=self.folder, capture_output=True, text=True,
-                              timeout=100, check=False, **options)
+                              timeout=250, check=False, **options)
 
     def sweep(self, *arguments, model=RING, **options):
         return self.run_program("sweep", model, *FEW, *arguments, **options)
