@@ -137,7 +137,7 @@ TEST(WireAntennas, PowerBalance) {
     tee.wires.push_back(wire_through("hat", {{-0.05, 0, 0.2}, {0.05, 0, 0.2}}, 1e-3));
     for (const Model& model : {dipole(0.47, 1e-3, 2e-3), lossy, monopole(0.24, 2e-3, 4e-3), tee,
                                folded_dipole(0.48, 0.02, 1e-3, 2e-3, 0.01), wire_loop(0.16, 1e-3, 2e-3)})
-        EXPECT_NEAR(balance(model, frequency_hz), 1, 2e-4);
+        EXPECT_NEAR(balance(model, frequency_hz), 1, 1e-4);
 }
 
 // The form that the fast sweep uses, with the wire's own impedance, over ground and free.
