@@ -152,6 +152,30 @@ TEST(Affine, GroundPlane) {
     EXPECT_LT(reflection_error(op, affine), 1e-7);
 }
 
+// A wire of poor metal: its internal impedance is one of the exact terms.
+TEST(Affine, LossyWire) {
+    Mesh mesh;
+    constexpr int cells = 20;
+    for (int i = 0; i <= cells; ++i) mesh.nodes.emplace_back(0, 0, 0.008 * i);
+    Conductor metal;
+    metal.conductivity_s_per_m = 1e4;
+    mesh.conductors = {metal};
+    for (int i = 0; i < cells; ++i) {
+        Cell cell;
+        cell.kind = CellKind::segment;
+        cell.node = {i, i + 1, -1, -1};
+        cell.conductor = 0;
+        cell.radius_m = 5e-4;
+        mesh.cells.push_back(cell);
+    }
+    Gap gap;
+    gap.members.push_back({cells / 2, Vec3(0, 0, 1 / 0.008)});
+    gap.length_m = 0.008;
+    mesh.ports = {gap};
+    const Operator op(mesh);
+    EXPECT_LT(reflection_error(op, AffineOperator(op, top_hz)), 1e-7);
+}
+
 TEST(Affine, TooFewFillsAreRefused) {
     const Operator op = lossy_operator();
     AffineOptions options;
