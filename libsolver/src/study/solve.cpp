@@ -1,4 +1,5 @@
 #include <annulet/core/diagnostics.hpp>
+#include <annulet/mesh/quality.hpp>
 #include <annulet/study/solve.hpp>
 
 #include <fmt/format.h>
@@ -61,6 +62,23 @@ std::vector<std::string> cautions_of(const Model& model) {
                 "thickness that goes with it",
                 laminate.name));
     return cautions;
+}
+
+/// Cells and sheets together, before any matrix is allocated: an edge belongs to two cells, a column of a sheet has one
+/// vertical flux and half of its lateral fluxes in every layer.
+void refuse_too_large(const Mesh& mesh, double limit_bytes) {
+    double unknowns = 0;
+    for (const Cell& cell : mesh.cells) unknowns += 0.5 * cell.corners();
+    for (const SheetMesh& sheet : mesh.sheets)
+        for (const auto& column : sheet.columns)
+            unknowns += 1 + (column.kind == CellKind::quadrilateral ? 2.0 : 1.5) * sheet.layers();
+    const double bytes = matrix_bytes(unknowns);
+    if (limit_bytes <= 0 || bytes <= limit_bytes) return;
+    throw NumericalError(
+        fmt::format("the mesh has about {:.0f} unknowns, whose matrix would take {:.1f} GB; {:.1f} GB are at hand: use "
+                    "fewer layers, "
+                    "a smaller sheet, a lower top frequency or fewer cells per wavelength",
+                    unknowns, bytes / 1e9, limit_bytes / 1e9));
 }
 
 void refuse_static_laminate(const Model& model) {
@@ -138,6 +156,7 @@ SolvedModel solve_model(Model model, const SolveOptions& options, Progress* prog
 
     checkpoint(progress, "mesh", 0, 0);
     auto mesh = make_mesh(model, mesh_options(model, frequencies.back(), options));
+    refuse_too_large(mesh, options.memory_limit_bytes);
     timing.mesh_s = stage.lap();
 
     checkpoint(progress, "assemble", 0, 0);
