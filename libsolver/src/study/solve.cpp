@@ -69,13 +69,17 @@ std::vector<std::string> cautions_of(const Model& model) {
 void refuse_too_large(const Mesh& mesh, double limit_bytes) {
     double unknowns = 0;
     for (const Cell& cell : mesh.cells) unknowns += 0.5 * cell.corners();
-    for (const SheetMesh& sheet : mesh.sheets)
+    double statics = 0;  // each layer has some 25 columns of layers near it, and its vertical flux 2 unknowns per layer
+    for (const SheetMesh& sheet : mesh.sheets) {
+        const double layers = sheet.layers(), columns = static_cast<double>(sheet.columns.size());
         for (const auto& column : sheet.columns)
-            unknowns += 1 + (column.kind == CellKind::quadrilateral ? 2.0 : 1.5) * sheet.layers();
-    const double bytes = matrix_bytes(unknowns);
+            unknowns += 1 + (column.kind == CellKind::quadrilateral ? 2.0 : 1.5) * layers;
+        statics += 12.0 * 25 * columns * layers * layers * std::pow(1 + 2 * layers, 2);
+    }
+    const double bytes = matrix_bytes(unknowns) + statics;
     if (limit_bytes <= 0 || bytes <= limit_bytes) return;
     throw NumericalError(
-        fmt::format("the mesh has about {:.0f} unknowns, whose matrix would take {:.1f} GB; {:.1f} GB are at hand: use "
+        fmt::format("the mesh has about {:.0f} unknowns and would take {:.1f} GB; {:.1f} GB are at hand: use "
                     "fewer layers, "
                     "a smaller sheet, a lower top frequency or fewer cells per wavelength",
                     unknowns, bytes / 1e9, limit_bytes / 1e9));
