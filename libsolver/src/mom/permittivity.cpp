@@ -48,9 +48,4 @@ Complex polarisation_factor(const Permittivity& permittivity, Complex s) {
     return 1.0 / (s * constants::eps0_f_per_m * (permittivity(s) - 1.0));
 }
 
-double thickness_scale(const Laminate& laminate) {
-    if (!laminate.permittivity_z || laminate.permittivity.empty()) return 1;
-    return std::sqrt(laminate.permittivity.front().permittivity / *laminate.permittivity_z);
-}
-
 }  // namespace annulet

@@ -80,8 +80,7 @@ void refuse_too_large(const Mesh& mesh, double limit_bytes) {
     if (limit_bytes <= 0 || bytes <= limit_bytes) return;
     throw NumericalError(
         fmt::format("the mesh has about {:.0f} unknowns and would take {:.1f} GB; {:.1f} GB are at hand: use "
-                    "fewer layers, "
-                    "a smaller sheet, a lower top frequency or fewer cells per wavelength",
+                    "fewer layers, a smaller sheet, a lower top frequency or fewer cells per wavelength",
                     unknowns, bytes / 1e9, limit_bytes / 1e9));
 }
 

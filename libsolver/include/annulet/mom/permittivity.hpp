@@ -28,8 +28,4 @@ private:
 /// 1 / (s eps0 (eps_r(s) - 1)), ohm metre: what the polarisation mass is multiplied by.
 std::complex<double> polarisation_factor(const Permittivity& permittivity, std::complex<double> s);
 
-/// Anisotropic sheets with eps_z, eps_xy act on a field normal at the metal and lateral elsewhere as an isotropic one
-/// of sqrt(eps_z eps_xy) whose thickness is this factor, sqrt(eps_xy / eps_z), larger; 1 for isotropic ones.
-double thickness_scale(const Laminate& laminate);
-
 }  // namespace annulet
